@@ -1,0 +1,88 @@
+/**
+ * What the studies hand to the sheet, the report and the command line: plain data, SI and radians, serialisable. Vectors are in
+ * the housing frame of their joint as the arm file has it. The joint load is what everything outboard puts ON the joint.
+ */
+
+export type BearingName = 'A' | 'B' | 'ring';
+export type Triple = readonly [number, number, number];
+
+/** The parts of a case that a pose leaves free, as they were taken for a result; null parts were not free. */
+export interface FreeChoice {
+  /** Unit vector of a tip force of direction `any`, base frame. */
+  readonly tipForce: Triple | null;
+  /** rad/s and rad/s² of each revolute joint, for a case with motion. */
+  readonly speed: readonly number[] | null;
+  readonly accel: readonly number[] | null;
+}
+
+export interface Wrench {
+  /** N */
+  readonly force: Triple;
+  /** N·m about the joint origin */
+  readonly moment: Triple;
+}
+
+export interface BearingLoad {
+  /** Size of the radial load on the bearing, N; over the free parts of the case, the worst. */
+  readonly radial: number;
+  readonly radialVector: Triple;
+  /** Along the joint axis, signed, N; 0 on a bearing that carries none. */
+  readonly axial: number;
+}
+
+export interface PoseJoint extends Wrench {
+  readonly joint: string;
+  /** N·m, the joint load's moment about the axis. */
+  readonly torque: number;
+  readonly bearings: Partial<Readonly<Record<BearingName, BearingLoad>>>;
+}
+
+export interface PoseResult {
+  readonly case: string;
+  readonly pose: readonly number[];
+  /** Words for what the case leaves free (then the joint load is without it, the bearing loads with its worst); null otherwise. */
+  readonly free: string | null;
+  readonly joints: readonly PoseJoint[];
+}
+
+export type Verdict = 'pass' | 'over' | 'unassessed';
+
+/** One row of a sweep, a worst-pose search or an assessment. */
+export interface CheckRow {
+  readonly joint: string;
+  /** Index into the arm file's joints. */
+  readonly jointIndex: number;
+  readonly bearing: BearingName | null;
+  readonly check: string;
+  readonly unit: string;
+  /** Attained at `pose` in `case`; NaN where it failed. */
+  readonly value: number;
+  readonly case: string;
+  readonly pose: readonly number[];
+  readonly free: FreeChoice | null;
+  readonly wrench: Wrench;
+  /** Nothing within the travel exceeds it; null where the study proves nothing (grid sweep). */
+  readonly bound: number | null;
+  /** (bound - value)/bound */
+  readonly gap: number | null;
+  readonly certified: boolean | null;
+  /** Null where capacity is not known; then a verdict, if any, is `unassessed`. */
+  readonly allowable: number | null;
+  readonly utilisation: number | null;
+  /** Null on pure load rows, which have nothing to be held against. */
+  readonly verdict: Verdict | null;
+  readonly reason: string | null;
+  readonly source: string | null;
+}
+
+export interface SweepResult {
+  /** Poses of the whole grid (per case). */
+  readonly poses: number;
+  /** Poses assessed; less than `poses` where the sweep was stopped. */
+  readonly done: number;
+  readonly partial: boolean;
+  readonly seconds: number;
+  /** Worst over all cases. */
+  readonly rows: readonly CheckRow[];
+  readonly eachCase: readonly CheckRow[];
+}
