@@ -1,0 +1,105 @@
+import * as z from 'zod/mini';
+import { armFileSchema, fieldAbout } from './armFile.ts';
+import { unitOfKey } from './fileUnits.ts';
+
+/** As much of JSON Schema (draft 7, which editors know best) as the generated one uses. */
+export interface JsonSchema {
+  readonly $schema?: string;
+  readonly type?: string;
+  readonly description?: string;
+  readonly default?: unknown;
+  readonly const?: unknown;
+  readonly enum?: readonly unknown[];
+  readonly properties?: Readonly<Record<string, JsonSchema>>;
+  readonly required?: readonly string[];
+  readonly additionalProperties?: boolean | JsonSchema;
+  readonly items?: JsonSchema | readonly JsonSchema[];
+  readonly anyOf?: readonly JsonSchema[];
+  readonly oneOf?: readonly JsonSchema[];
+}
+
+/** The JSON Schema of an arm file; `models/arm.schema.json` is this, and a test holds the two equal. */
+export function armJsonSchema(): JsonSchema {
+  const schema = z.toJSONSchema(armFileSchema, { target: 'draft-07', metadata: fieldAbout, io: 'input' });
+  return {
+    title: 'Arm file',
+    description: 'A serial arm with its bearings, loads and targets',
+    ...schema,
+  } as JsonSchema;
+}
+
+/** One row of the field reference. */
+export interface FieldRow {
+  /** `joints[].support.span_mm`; `*` stands for a name. The same field of several kinds of object gives one row. */
+  readonly path: string;
+  readonly unit: string;
+  readonly meaning: string;
+  /** Kinds (clevis, belt, needle …) that have the field; empty: all. */
+  readonly kinds: readonly string[];
+  readonly required: boolean;
+  /** What stands for it when it is left out; empty: nothing. */
+  readonly default: string;
+}
+
+interface OpenRow extends FieldRow {
+  readonly kinds: string[];
+}
+
+function kindsOf(schema: JsonSchema): readonly string[] {
+  const kind = schema.properties?.arrangement ?? schema.properties?.kind;
+  if (!kind) return [];
+  return (kind.enum ?? [kind.const]).map(String);
+}
+
+function defaultText(value: unknown): string {
+  return value === undefined ? '' : typeof value === 'string' ? value : JSON.stringify(value).replaceAll(',', ', ');
+}
+
+/** Values a field may take, where they are few. */
+function choices(schema: JsonSchema): string {
+  const values =
+    schema.enum ?? (schema.anyOf?.every((option) => 'const' in option) ? schema.anyOf.map((o) => o.const) : []);
+  return values.length > 0 ? ` (${values.map((value) => `\`${value}\``).join(', ')})` : '';
+}
+
+function collect(schema: JsonSchema, path: string, kinds: readonly string[], rows: Map<string, OpenRow>): void {
+  const options = schema.oneOf ?? schema.anyOf;
+  if (options) {
+    for (const option of options) collect(option, path, kindsOf(option), rows);
+    return;
+  }
+  if (schema.items && !Array.isArray(schema.items)) collect(schema.items as JsonSchema, `${path}[]`, [], rows);
+  if (typeof schema.additionalProperties === 'object') collect(schema.additionalProperties, `${path}.*`, [], rows);
+  for (const [key, field] of Object.entries(schema.properties ?? {})) {
+    const at = path === '' ? key : `${path}.${key}`;
+    const seen = rows.get(at);
+    if (seen) seen.kinds.push(...kinds);
+    else {
+      rows.set(at, {
+        path: at,
+        unit: unitOfKey(key) ?? '',
+        meaning: (field.description ?? '') + choices(field),
+        kinds: [...kinds],
+        required: schema.required?.includes(key) ?? false,
+        default: defaultText(field.default),
+      });
+    }
+    collect(field, at, [], rows);
+  }
+}
+
+/** Rows of the field reference, from the top of the file down, for the README. */
+export function fieldReference(): readonly FieldRow[] {
+  const rows = new Map<string, OpenRow>();
+  const schema = armJsonSchema();
+  collect(schema, '', [], rows);
+  const all = new Map([...rows.values()].map((row) => [row.path, row]));
+  return [...rows.values()].map((row) => {
+    // A field that all kinds of its object have needs no list of them: the discriminator's row has them all.
+    const parent = row.path.slice(0, row.path.lastIndexOf('.'));
+    const kind = all.get(`${parent}.arrangement`) ?? all.get(`${parent}.kind`);
+    return kind && kind.kinds.length === row.kinds.length
+      ? { ...row, kinds: row.path === kind.path ? row.kinds : [] }
+      : row;
+  });
+}
