@@ -1,0 +1,30 @@
+/** What every rule of `shaft/`, `plain/` and `play/` hands back and says about itself. */
+
+/** How far a formula or table was traced: read in its source, derived again numerically, recalled, or trade habit. */
+export type Trust = 'verified' | 'recomputed' | 'from memory' | 'common practice';
+
+/** What a report prints beside a result. */
+export interface Rule {
+  readonly name: string;
+  readonly formula: string;
+  readonly source: string;
+  readonly trust: Trust;
+  readonly units: string;
+  readonly range: string;
+}
+
+/** A value, or why there is none and what to fill in. */
+export type Assessed<T = number> = { readonly value: T } | { readonly unassessed: string };
+
+/** The number as a value; a sentence where it is not a number, so that nothing broken can pass. Infinity is a value (no load). */
+export function assessed(value: number, reason: string): Assessed {
+  return Number.isNaN(value) ? { unassessed: reason } : { value };
+}
+
+/**
+ * A range of a quantity that is only known between limits (tolerances), smallest first.
+ */
+export interface Range {
+  readonly from: number;
+  readonly to: number;
+}
