@@ -43,6 +43,7 @@ export interface FieldRow {
 
 interface OpenRow extends FieldRow {
   readonly kinds: string[];
+  meaning: string;
 }
 
 function kindsOf(schema: JsonSchema): readonly string[] {
@@ -55,11 +56,13 @@ function defaultText(value: unknown): string {
   return value === undefined ? '' : typeof value === 'string' ? value : JSON.stringify(value).replaceAll(',', ', ');
 }
 
-/** Values a field may take, where they are few. */
-function choices(schema: JsonSchema): string {
+/** The description, with the values the field may take where they are few. */
+function meaningOf(field: JsonSchema): string {
+  const about = field.description ?? '';
+  if (typeof field.const === 'string') return `\`${field.const}\`: ${about}`;
   const values =
-    schema.enum ?? (schema.anyOf?.every((option) => 'const' in option) ? schema.anyOf.map((o) => o.const) : []);
-  return values.length > 0 ? ` (${values.map((value) => `\`${value}\``).join(', ')})` : '';
+    field.enum ?? (field.anyOf?.every((option) => 'const' in option) ? field.anyOf.map((o) => o.const) : []);
+  return values.length > 0 ? `${about} (${values.map((value) => `\`${value}\``).join(', ')})` : about;
 }
 
 function collect(schema: JsonSchema, path: string, kinds: readonly string[], rows: Map<string, OpenRow>): void {
@@ -73,12 +76,15 @@ function collect(schema: JsonSchema, path: string, kinds: readonly string[], row
   for (const [key, field] of Object.entries(schema.properties ?? {})) {
     const at = path === '' ? key : `${path}.${key}`;
     const seen = rows.get(at);
-    if (seen) seen.kinds.push(...kinds);
-    else {
+    if (seen) {
+      // The field that tells the kinds apart says what each of them is.
+      if (key === 'kind' || key === 'arrangement') seen.meaning += `; ${meaningOf(field)}`;
+      seen.kinds.push(...kinds);
+    } else {
       rows.set(at, {
         path: at,
         unit: unitOfKey(key) ?? '',
-        meaning: (field.description ?? '') + choices(field),
+        meaning: meaningOf(field),
         kinds: [...kinds],
         required: schema.required?.includes(key) ?? false,
         default: defaultText(field.default),

@@ -48,16 +48,3 @@ export function unitVector(v: Vec3): Vec3 | null {
   const length = Math.hypot(v[0], v[1], v[2]);
   return length < 1e-9 ? null : [v[0] / length + 0, v[1] / length + 0, v[2] / length + 0];
 }
-
-/**
- * The two directions square to a joint axis from which a drive's angles count, in the housing frame: angle a points along x cos a + y sin a, and
- * turning is positive about the axis. `x` is the frame's x axis made square to the joint axis, or its y axis where |axis·x| ≥ 0.9.
- */
-export function housingReference(axis: Vec3): { readonly x: Vec3; readonly y: Vec3 } {
-  const [ax, ay, az] = axis;
-  const start: Vec3 = Math.abs(ax) >= 0.9 ? [0, 1, 0] : [1, 0, 0];
-  const along = start[0] * ax + start[1] * ay + start[2] * az;
-  const x = unitVector([start[0] - along * ax, start[1] - along * ay, start[2] - along * az])!;
-  const y: Vec3 = [ay * x[2] - az * x[1] + 0, az * x[0] - ax * x[2] + 0, ax * x[1] - ay * x[0] + 0];
-  return { x, y };
-}
