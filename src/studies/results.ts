@@ -28,6 +28,8 @@ export interface BearingLoad {
   readonly radialVector: Triple;
   /** Along the joint axis, signed, N; 0 on a bearing that carries none. */
   readonly axial: number;
+  /** Size of the tilting moment about the centre of a ring bearing, which carries it by itself, N·m; null for A and B. */
+  readonly moment: number | null;
 }
 
 export interface PoseJoint extends Wrench {

@@ -1,0 +1,85 @@
+/** Check rows of a sweep, a worst-pose search or an assessment as one table; only the columns that the rows fill. */
+import type { CheckRow } from '../studies/results.ts';
+import type { UnitSystem } from '../units/format.ts';
+import { poseText, shownUnit } from './shown.ts';
+import { type Cell, type Column, decimalsFor, type Table } from './table.ts';
+
+export interface RowsTableOptions {
+  readonly title?: string;
+  readonly system?: UnitSystem;
+  /** Each joint's name on its first row only (default); false writes it on every row, as a spreadsheet wants it. */
+  readonly group?: boolean;
+}
+
+function words(title: string): Column {
+  return { title, unit: null, decimals: null };
+}
+
+/** Decimals for a column of several units: enough for each unit's largest value. */
+function valueDecimals(rows: readonly CheckRow[], system: UnitSystem): number {
+  const byUnit = new Map<string, number[]>();
+  for (const row of rows) {
+    const values = byUnit.get(row.unit) ?? [];
+    byUnit.set(row.unit, values);
+    const shown = shownUnit(row.unit, system);
+    for (const value of [row.value, row.bound, row.allowable]) if (value !== null) values.push(shown.of(value));
+  }
+  return Math.max(0, ...[...byUnit.values()].map((values) => decimalsFor(values)));
+}
+
+/** What a row is held against, in words: never silent about what failed or was not assessed. */
+function verdictText(row: CheckRow): string | null {
+  if (Number.isNaN(row.value)) return 'failed';
+  return row.verdict;
+}
+
+export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions = {}): Table {
+  const system = options.system ?? 'metric';
+  const group = options.group ?? true;
+  const bounded = rows.some((row) => row.bound !== null);
+  const judged = rows.some((row) => row.verdict !== null || Number.isNaN(row.value));
+  const explained = judged && rows.some((row) => row.reason !== null);
+  const decimals = valueDecimals(rows, system);
+  const columns: Column[] = [
+    words('joint'),
+    words('bearing'),
+    words('check'),
+    { title: bounded ? 'found' : 'worst', unit: null, decimals },
+    ...(bounded ? [{ title: 'bound', unit: null, decimals }] : []),
+    words('unit'),
+    ...(bounded ? [{ title: 'gap', unit: '%', decimals: 3 }, words('certified')] : []),
+    ...(judged
+      ? [
+          { title: 'allowable', unit: null, decimals },
+          { title: 'utilisation', unit: null, decimals: 3 },
+          words('verdict'),
+        ]
+      : []),
+    words('case'),
+    { title: 'pose', unit: '°', decimals: null },
+    ...(explained ? [words('why')] : []),
+  ];
+  let last = -1;
+  const body = rows.map((row): Cell[] => {
+    const shown = shownUnit(row.unit, system);
+    const value = (v: number | null) => (v === null ? null : shown.of(v));
+    const name = group && row.jointIndex === last ? '' : row.joint;
+    last = row.jointIndex;
+    return [
+      name,
+      row.bearing,
+      row.check,
+      value(row.value),
+      ...(bounded ? [value(row.bound)] : []),
+      shown.unit,
+      ...(bounded
+        ? [row.gap === null ? null : row.gap * 100, row.certified === null ? null : row.certified ? 'yes' : 'no']
+        : []),
+      ...(judged ? [value(row.allowable), row.utilisation, verdictText(row)] : []),
+      row.case,
+      poseText(row.pose),
+      ...(explained ? [row.reason ?? ''] : []),
+    ];
+  });
+  return { title: options.title ?? null, columns, rows: body };
+}
