@@ -21,10 +21,16 @@ export function assessed(value: number, reason: string): Assessed {
   return Number.isNaN(value) ? { unassessed: reason } : { value };
 }
 
-/**
- * A range of a quantity that is only known between limits (tolerances), smallest first.
- */
+/** A quantity known only between limits, smallest first. */
 export interface Range {
   readonly from: number;
   readonly to: number;
+}
+
+/** Demand over limit: 1 is the limit. Not a number, a negative demand or limit: unassessed. A missing limit (null) says what to fill in. */
+export function utilisation(demand: number, limit: number | null, fillIn: string): Assessed {
+  if (limit === null) return { unassessed: fillIn };
+  if (!(demand >= 0 && limit >= 0)) return { unassessed: 'the demand or its limit is not a usable number' };
+  if (limit === 0) return { value: demand === 0 ? 0 : Number.POSITIVE_INFINITY };
+  return { value: demand / limit };
 }

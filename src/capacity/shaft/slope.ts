@@ -49,10 +49,3 @@ export function slopeLimit(bearing: Bearing): Assessed<SlopeLimit> {
   const value = LIMITS[bearing.kind];
   return value ? { value } : { unassessed: 'no limiting misalignment is known for this kind: fill in `misalignment`' };
 }
-
-/** Slope over limit; 1 is the limit. */
-export function slopeUtilisation(slope: number, limit: number): Assessed {
-  if (!(slope >= 0 && limit >= 0)) return { unassessed: 'the slope or its limit is not a number' };
-  if (limit === 0) return { value: slope === 0 ? 0 : Number.POSITIVE_INFINITY };
-  return { value: slope / limit };
-}

@@ -6,7 +6,6 @@ import {
   roundSection,
   shaftParts,
   slopeLimit,
-  slopeUtilisation,
   thrustShare,
   torqueShare,
 } from '../../../src/capacity/shaft/index.ts';
@@ -183,13 +182,5 @@ describe('slope at the bearings', () => {
     } as const;
     expect(limit(bushing)).toBeCloseTo(0.002, 12);
     expect(limit({ ...bushing, clearance: null })).toContain('clearance');
-  });
-
-  it('utilisation is slope over limit; nothing broken is a value', () => {
-    expect(slopeUtilisation(0.0005, 0.001)).toEqual({ value: 0.5 });
-    expect(slopeUtilisation(0.0005, 0)).toEqual({ value: Number.POSITIVE_INFINITY });
-    expect(slopeUtilisation(0, 0)).toEqual({ value: 0 });
-    expect(slopeUtilisation(Number.NaN, 0.001)).toHaveProperty('unassessed');
-    expect(slopeUtilisation(0.001, Number.NaN)).toHaveProperty('unassessed');
   });
 });
