@@ -1,6 +1,8 @@
 /** Joint loads against a general-purpose rigid-body engine: every joint of random arms, at rest and in motion. */
+import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import type { Arm } from '../../src/arm/arm.ts';
+import { readArm } from '../../src/arm/readArm.ts';
 import { seededRandom } from '../../src/math/random.ts';
 import { flattenArm, wrenchToFile } from '../../src/mechanics/chain.ts';
 import { dynamicLoads, poseScratch, staticLoads } from '../../src/mechanics/newtonEuler.ts';
@@ -89,4 +91,21 @@ describe('joint loads of the outside engine', () => {
       expect(worst).toBeLessThan(1e-9);
     });
   }
+
+  const models = readdirSync('models').filter((name) => name.endsWith('.arm.json'));
+  it(`of every model and case of the project, ${POSES} poses each (seed 85)`, async () => {
+    expect(models.length).toBeGreaterThan(0);
+    let worst = 0;
+    for (const name of models) {
+      const reading = readArm(readFileSync(`models/${name}`, 'utf8'));
+      if (!reading.ok) throw new Error(`${name} is not sound`);
+      for (const load of reading.arm.cases) {
+        const arm = { ...reading.arm, cases: [load] };
+        await atPoses(arm, 85, load.motion !== null, (both) => {
+          worst = Math.max(worst, difference(both));
+        });
+      }
+    }
+    expect(worst).toBeLessThan(1e-9);
+  });
 });
