@@ -1,17 +1,6 @@
 /** What every rule of `shaft/`, `plain/` and `play/` hands back and says about itself. */
 
-/** How far a formula or table was traced: read in its source, derived again numerically, recalled, or trade habit. */
-export type Trust = 'verified' | 'recomputed' | 'from memory' | 'common practice';
-
-/** What a report prints beside a result. */
-export interface Rule {
-  readonly name: string;
-  readonly formula: string;
-  readonly source: string;
-  readonly trust: Trust;
-  readonly units: string;
-  readonly range: string;
-}
+export type { Rule, Trust } from './rolling/index.ts';
 
 /** A value, or why there is none and what to fill in. */
 export type Assessed<T = number> = { readonly value: T } | { readonly unassessed: string };
