@@ -69,25 +69,27 @@ function bits(value: bigint): number {
   return value.toString(16).length * 4;
 }
 
-/** The double nearest to the fraction (ties to even; ±Infinity beyond the range of a double). */
+/** The double nearest to the fraction (ties to even; ±Infinity beyond the range of a double; below 2e-308 to the last bit but one). */
 export function toNumber(value: Rational): number {
   const size = value.num < 0n ? -value.num : value.num;
   if (size <= EXACT && value.den <= EXACT) return Number(value.num) / Number(value.den);
   // At least 64 bits of quotient, and one sticky bit for the rest, so that the conversion of the quotient rounds as the fraction would.
-  const shift = Math.max(0, 68 + bits(value.den) - bits(size));
-  const scaled = size << BigInt(shift);
-  const sticky = scaled % value.den === 0n ? 0n : 1n;
-  const quotient = Number(((scaled / value.den) << 1n) | sticky);
-  const result = scaleDown(quotient, shift + 1);
+  const shift = 68 + bits(value.den) - bits(size);
+  const over = shift > 0 ? size << BigInt(shift) : size;
+  const under = shift < 0 ? value.den << BigInt(-shift) : value.den;
+  const sticky = over % under === 0n ? 0n : 1n;
+  const result = scaled(Number(((over / under) << 1n) | sticky), -shift - 1);
   return value.num < 0n ? -result : result;
 }
 
-function scaleDown(value: number, shift: number): number {
-  let rest = shift;
+/** value · 2^exponent, in steps that neither overflow nor vanish on the way. */
+function scaled(value: number, exponent: number): number {
   let result = value;
-  while (rest > 1000) {
-    result *= 2 ** -1000;
-    rest -= 1000;
+  let rest = exponent;
+  while (Math.abs(rest) > 1000) {
+    const step = Math.sign(rest) * 1000;
+    result *= 2 ** step;
+    rest -= step;
   }
-  return result * 2 ** -rest;
+  return result * 2 ** rest;
 }

@@ -58,7 +58,7 @@ function combine(a: Unit, b: Unit, exponent: number): Unit {
 }
 
 // A symbol, its exponent (mm2, mm^2, mm², s⁻¹), or the bare 1 of `1/min`.
-const FACTOR = /^(?:(1)(?=\s*\/)|([a-zA-Zµμ°º]+|["'″′”’])\s*(?:\^?(-?[1-4])|([⁻⁰¹²³⁴]+))?)/u;
+const FACTOR = /^(?:(1)(?=\s*\/)|([a-zA-Zµμ°º]+|["'″′”’])(?:\^?(-?[1-4])|([⁻⁰¹²³⁴]+))?)/u;
 // `/` divides by the one factor after it; the other signs, or nothing but a space, multiply.
 const JOIN = /^\s*([/·⋅*×.-])\s*|^\s+/u;
 
