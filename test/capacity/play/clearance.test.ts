@@ -110,7 +110,9 @@ describe('ISO 286 zones', () => {
     [120, 180],
   ] as const;
   it.each(steps)('table against formula, over %i to %i mm', (over, incl) => {
+    // the standard departs most from its formulas, by about 2 µm, in the smallest step
     const D = Math.sqrt(over * incl);
+    const coarse = over === 1 ? 2.1 : 0;
     const unit = 0.45 * Math.cbrt(D) + 0.001 * D;
     const limits = (code: string, seat: 'shaft' | 'hole' = 'shaft') => {
       const result = zone(code, incl, seat);
@@ -124,12 +126,12 @@ describe('ISO 286 zones', () => {
       // the standard rounds the smallest step up to a series of its own (4, 6, 10, 14)
       within(width, factor * unit, over === 1 ? 1.4 : 0.5 + 0.05 * factor * unit);
     });
-    within(-limits('f7')[1], 5.5 * D ** 0.41, 1);
-    within(-limits('g6')[1], 2.5 * D ** 0.34, 1);
-    within(limits('k6')[0], 0.6 * Math.cbrt(D), 1.1);
-    within(limits('n6')[0], 5 * D ** 0.34, 2);
+    within(-limits('f7')[1], 5.5 * D ** 0.41, Math.max(1, coarse));
+    within(-limits('g6')[1], 2.5 * D ** 0.34, Math.max(1, coarse));
+    within(limits('k6')[0], 0.6 * Math.cbrt(D), Math.max(1.1, coarse));
+    within(limits('n6')[0], 5 * D ** 0.34, Math.max(2, coarse));
     // m: the step from IT6 to IT7; p: IT7 and up to 5 µm more
-    within(limits('m6')[0], limits('h6')[0] - limits('h7')[0], 2);
+    within(limits('m6')[0], limits('h6')[0] - limits('h7')[0], Math.max(2, coarse));
     const p = limits('p6')[0] + limits('h7')[0];
     expect(p).toBeGreaterThanOrEqual(over === 1 ? -4 : 0);
     expect(p).toBeLessThanOrEqual(5);
