@@ -56,5 +56,6 @@ export function reliabilityAt(demanded: number, L10: number): Rated {
   if (L10 === Number.POSITIVE_INFINITY || demanded === 0) return rated(MOST, 'reliability-capped');
   const R = survival(demanded / L10);
   if (R > MOST) return rated(MOST, 'reliability-capped');
-  return R < LEAST ? rated(R, 'reliability-extrapolated') : rated(R);
+  // A hair for L10 itself, whose 0.9 comes back rounded.
+  return R < LEAST - 1e-12 ? rated(R, 'reliability-extrapolated') : rated(R);
 }
