@@ -1,5 +1,6 @@
 /** Play and stiffness: clearance, fits, tilt, lost motion, tip error. */
 export * from './axisShift.ts';
+export * from './bearingStiffness.ts';
 export * from './clearanceGroups.ts';
 export * from './elasticTilt.ts';
 export * from './fits.ts';
