@@ -18,7 +18,8 @@ export function arcBound(v1: number, v2: number, width: number, kappa: number, s
   const s = Math.sin(width);
   const rise = (a2 - a1 * c) / s;
   let wave: number;
-  if (rise <= 0) wave = v1;
+  // Falling at the start: the sinusoid may still pass a trough and come up again, never a crest.
+  if (rise <= 0) wave = Math.max(v1, v2);
   else if (rise * c >= a1 * s) wave = v2;
   else wave = Math.sqrt(a1 * a1 + rise * rise) - kappa;
   const half = Math.sin(width / 4);

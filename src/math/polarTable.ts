@@ -40,7 +40,7 @@ export class PolarTable {
 
   private node(j: number): number {
     const value = this.nodes[j]!;
-    return value === value ? value : this.compute(j);
+    return Number.isNaN(value) ? this.compute(j) : value;
   }
 
   private compute(j: number): number {

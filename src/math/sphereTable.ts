@@ -78,7 +78,7 @@ export class SphereTable {
     const page = this.pages[index >> PAGE_BITS];
     if (page !== undefined) {
       const value = page[index & (PAGE - 1)]!;
-      if (value === value) return value;
+      if (!Number.isNaN(value)) return value;
     }
     return this.compute(index, face, j, k);
   }

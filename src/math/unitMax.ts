@@ -1,5 +1,5 @@
 /**
- * Upper bound of the maximum, over unit vectors e of one to three components, of a function G(e) that is convex and positively
+ * Upper bound of the maximum, over unit vectors e of up to three components, of a function G(e) that is convex and positively
  * homogeneous in (e, 1): what is left of a norm when its direction is free. κ ≥ G(0, -1), the price of overshooting the constant part.
  */
 import { ArcMax } from './arcMax.ts';
@@ -31,6 +31,7 @@ export class UnitMax {
   /** `sag` ≥ |G| of any unit e; bounds below `enough` are not refined. */
   run(f: UnitFunction, level: number, kappa: number, sag: number, enough: number): number {
     this.e.fill(0);
+    if (this.rows === 0) return f.unit(0, 0, 0, level);
     if (this.rows === 1) {
       const plus = f.unit(1, 0, 0, level);
       const minus = f.unit(-1, 0, 0, level);

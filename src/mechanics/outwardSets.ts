@@ -38,7 +38,8 @@ export class OutwardSets {
   readonly reach: Float64Array;
   private readonly levels: LevelledLink[];
 
-  constructor(chain: Chain, masses: GravityMass) {
+  /** `previous`: sets of an earlier layout; those of joints with nothing changed outboard are taken over as they stand. */
+  constructor(chain: Chain, masses: GravityMass, previous: OutwardSets | null = null) {
     const { n } = chain;
     this.chain = chain;
     this.outboard = new Float64Array(n + 1);
@@ -53,8 +54,16 @@ export class OutwardSets {
       }
       const own = Math.hypot(this.lever[3 * k]!, this.lever[3 * k + 1]!, this.lever[3 * k + 2]!);
       this.reach[k] = this.reach[k + 1]! + own;
-      this.levels[k] = new LevelledLink(this, k, k + 1 < n ? this.levels[k + 1]! : null);
+      const made = new LevelledLink(this, k, k + 1 < n ? this.levels[k + 1]! : null);
+      // Counted from the tip, so that a joint added at the ground keeps what stands outboard
+      const before = previous?.levels[k + (previous?.chain.n ?? 0) - n];
+      this.levels[k] = before && made.sameAs(before) ? before : made;
     }
+  }
+
+  /** Whether S_k here is S_k of the other: the same data outboard, and so the same tables. */
+  shares(k: number, other: OutwardSets): boolean {
+    return this.levels[k] === other.levels[k];
   }
 
   /** Upper bound of S_k(d) at the given level; exact for the last joint. */
@@ -116,6 +125,19 @@ class LevelledLink {
     this.cosHalf = this.to - this.from >= 2 * Math.PI ? -2 : Math.cos(0.5 * (this.to - this.from));
   }
 
+  sameAs(other: LevelledLink): boolean {
+    return (
+      this.next === other.next &&
+      this.bx === other.bx &&
+      this.by === other.by &&
+      this.bz === other.bz &&
+      this.from === other.from &&
+      this.to === other.to &&
+      this.full === other.full &&
+      this.r.every((v, k) => v === other.r[k])
+    );
+  }
+
   get filled(): number {
     return [...this.tables, ...this.polar].reduce((sum, table) => sum + (table?.filled ?? 0), 0);
   }
@@ -173,7 +195,7 @@ class LevelledLink {
   }
 
   private search(x: number, y: number, z: number, level: number): number {
-    if (this.up !== this.up) {
+    if (Number.isNaN(this.up)) {
       this.up = this.link(0, 0, 1, 0);
       this.down = this.link(0, 0, -1, 0);
     }
