@@ -15,23 +15,32 @@ export const LARGEST = 1e12;
 /** What must be above 0 must be above this, so that quotients stay finite. */
 export const SMALLEST = 1e-9;
 
+/** What is said of a field; annotation only, the reader applies the defaults. */
 interface About {
   readonly description: string;
-  /** What stands for the field when it is left out; only annotation, the reader applies it. */
+  /** The value that stands for the field when it is left out. */
   readonly default?: unknown;
+  /** The same in words, where it is no fixed value. */
+  readonly otherwise?: string;
 }
 
 /** Descriptions of the fields, for the JSON Schema and the field reference. */
 export const fieldAbout = z.registry<About>();
 
 function is<S extends z.core.$ZodType>(schema: S, description: string): S {
+  // One schema in two places would carry the words of the last.
+  if (fieldAbout.has(schema)) throw new Error(`a second description for one schema: ${description}`);
   fieldAbout.add(schema, { description });
   return schema;
 }
 
-function may<S extends z.core.$ZodType>(schema: S, description: string, fallback?: unknown): z.ZodMiniOptional<S> {
+function may<S extends z.core.$ZodType>(
+  schema: S,
+  description: string,
+  left: { readonly default?: unknown; readonly otherwise?: string } = {},
+): z.ZodMiniOptional<S> {
   const optional = z.optional(schema);
-  fieldAbout.add(optional, fallback === undefined ? { description } : { description, default: fallback });
+  fieldAbout.add(optional, { description, ...left });
   return optional;
 }
 
@@ -40,14 +49,17 @@ const aboveZero = () => z.number().check(z.gte(SMALLEST), z.lte(LARGEST));
 const notNegative = () => z.number().check(z.gte(0), z.lte(LARGEST));
 const between = (from: number, to: number) => z.number().check(z.gte(from), z.lte(to));
 const vector = () => z.tuple([anyNumber(), anyNumber(), anyNumber()]);
-// One line of text; `\p{C}` are control and unassigned characters.
+// One line of text without blanks at its ends. No control characters, which would garble a table or a terminal; written without Unicode classes,
+// for editors that read the pattern in the JSON Schema know none.
+// biome-ignore lint/suspicious/noControlCharactersInRegex: they are what is kept out
+const ONE_LINE = /^(?:[^\s\x00-\x1f\x7f-\x9f](?:[^\x00-\x1f\x7f-\x9f]*[^\s\x00-\x1f\x7f-\x9f])?)?$/;
 const name = () =>
   z
     .string()
     .check(
       z.minLength(1),
       z.maxLength(120),
-      z.regex(/^[^\p{C}\s](?:[^\p{C}]*[^\p{C}\s])?$/u, { error: 'one line of text without blanks at its ends' }),
+      z.regex(ONE_LINE, { error: 'one line of text without blanks at its ends' }),
     );
 const text = () => z.string().check(z.maxLength(20_000));
 
@@ -56,49 +68,50 @@ const inertia = () =>
     xx: is(notNegative(), 'Moment of inertia about the x axis through the centre of mass'),
     yy: is(notNegative(), 'About the y axis'),
     zz: is(notNegative(), 'About the z axis'),
-    xy: may(anyNumber(), 'Matrix entry xy, that is minus the integral of x y dm', 0),
-    xz: may(anyNumber(), 'Matrix entry xz', 0),
-    yz: may(anyNumber(), 'Matrix entry yz', 0),
+    xy: may(anyNumber(), 'Matrix entry xy, that is minus the integral of x y dm', { default: 0 }),
+    xz: may(anyNumber(), 'Matrix entry xz', { default: 0 }),
+    yz: may(anyNumber(), 'Matrix entry yz', { default: 0 }),
   });
 
-const linkSchema = z.strictObject({
-  name: may(name(), 'Name of the link', 'the name of its joint'),
-  mass_kg: is(notNegative(), 'Mass of the link; 0 for one whose weight is neglected'),
-  centre_mm: may(vector(), 'Centre of mass in the link frame; needed where the mass is not 0'),
-  inertia_kg_m2: may(
-    inertia(),
-    'Inertia about the centre of mass, axes of the link frame; needed where a case has motion',
-  ),
-});
+const linkSchema = is(
+  z.strictObject({
+    name: may(name(), 'Name of the link', { otherwise: 'the name of its joint' }),
+    mass_kg: is(notNegative(), 'Mass of the link; 0 for one whose weight is neglected'),
+    centre_mm: may(vector(), 'Centre of mass in the link frame; needed where the mass is not 0'),
+    inertia_kg_m2: may(
+      inertia(),
+      'Inertia about the centre of mass, axes of the link frame; needed where a case has motion',
+    ),
+  }),
+  'The link that this joint carries; on a fixed joint, the part fixed on',
+);
 
 const sectionSchema = z.strictObject({
   from_mm: is(anyNumber(), 'Where the section begins, along the joint axis from the joint origin'),
   to_mm: is(anyNumber(), 'Where it ends'),
   diameter_mm: is(aboveZero(), 'Outside diameter'),
-  bore_mm: may(notNegative(), 'Bore of a hollow section', 'the bore of the shaft'),
+  bore_mm: may(notNegative(), 'Bore of a hollow section', { otherwise: 'the bore of the shaft' }),
   bending_factor: may(
     between(1, 10),
     'Stress-concentration factor in bending at the end `to_mm` (shoulder or groove)',
-    1,
+    { default: 1 },
   ),
-  torsion_factor: may(between(1, 10), 'Stress-concentration factor in torsion at the end `to_mm`', 1),
+  torsion_factor: may(between(1, 10), 'Stress-concentration factor in torsion at the end `to_mm`', { default: 1 }),
   notch_radius_mm: may(aboveZero(), 'Fillet or groove radius at the end `to_mm`, for the notch sensitivity'),
 });
 
 const shaftSchema = z.strictObject({
   diameter_mm: is(aboveZero(), 'Outside diameter, also of every part that no section covers'),
-  bore_mm: may(notNegative(), 'Bore of a hollow shaft', 0),
+  bore_mm: may(notNegative(), 'Bore of a hollow shaft', { default: 0 }),
   material: may(name(), 'Key of a material in the table of materials'),
   turns_with: may(
     z.enum(['link', 'housing']),
     'What the shaft turns with: it decides which ring sees a turning load and what cycle the shaft sees',
-    'link',
+    { default: 'link' },
   ),
-  finish: may(
-    z.enum(['ground', 'machined', 'hot-rolled', 'forged']),
-    'Surface finish, for the fatigue strength',
-    'machined',
-  ),
+  finish: may(z.enum(['ground', 'machined', 'hot-rolled', 'forged']), 'Surface finish, for the fatigue strength', {
+    default: 'machined',
+  }),
   sections: may(
     z.array(sectionSchema).check(z.maxLength(MAX_SECTIONS)),
     'Steps of a stepped shaft, in order, not overlapping',
@@ -129,7 +142,7 @@ const pairParts = () => ({
 const clevisSchema = z.strictObject({
   arrangement: is(z.literal('clevis'), 'The hub lies between the bearings'),
   ...pairParts(),
-  offset_mm: may(anyNumber(), 'Shift of the middle of the pair from the hub', 0),
+  offset_mm: may(anyNumber(), 'Shift of the middle of the pair from the hub', { default: 0 }),
 });
 
 const cantileverSchema = z.strictObject({
@@ -142,7 +155,7 @@ const cantileverSchema = z.strictObject({
 const ringSchema = z.strictObject({
   arrangement: is(z.literal('ring'), 'One ring bearing that carries force and moment by itself'),
   hub_mm: is(anyNumber(), "Mid-plane of the link's hub, along the joint axis from the joint origin"),
-  station_mm: may(anyNumber(), 'Centre of the ring bearing, along the joint axis', 'hub_mm'),
+  station_mm: may(anyNumber(), 'Centre of the ring bearing, along the joint axis', { otherwise: '`hub_mm`' }),
   bearing: may(name(), 'Name of the ring bearing in the table `bearings`'),
   shaft: may(shaftSchema, 'The shaft or hollow tube the ring sits on'),
 });
@@ -169,7 +182,7 @@ const driveSchema = z.discriminatedUnion('kind', [
     tension_ratio: may(
       between(1, 20),
       'Sum of both strand tensions over the effective tension; 1 where the slack strand is fully slack',
-      1,
+      { default: 1 },
     ),
   }),
 ]);
@@ -178,17 +191,15 @@ const revoluteSchema = z.strictObject({
   name: is(name(), 'Name of the joint, used once in the file'),
   kind: is(z.literal('revolute'), 'A joint that turns'),
   origin_mm: is(vector(), "Joint origin in the previous link's frame"),
-  turn_deg: may(
-    vector(),
-    'Roll, pitch and yaw of the joint frame about fixed axes: Rz(yaw) Ry(pitch) Rx(roll)',
-    [0, 0, 0],
-  ),
+  turn_deg: may(vector(), 'Roll, pitch and yaw of the joint frame about fixed axes: Rz(yaw) Ry(pitch) Rx(roll)', {
+    default: [0, 0, 0],
+  }),
   axis: is(vector(), 'Joint axis in the joint frame; its length does not matter'),
   travel_deg: is(
     z.tuple([anyNumber(), anyNumber()]),
     'Lowest and highest joint angle; 360° or more between them is a full turn',
   ),
-  link: is(linkSchema, 'The link that this joint carries'),
+  link: linkSchema,
   support: may(supportSchema, 'Bearings and shaft; without it the joint reports its joint load alone'),
   drive: may(driveSchema, 'Gear or belt that loads the shaft with the drive torque'),
 });
@@ -197,8 +208,10 @@ const fixedSchema = z.strictObject({
   name: is(name(), 'Name of the joint, used once in the file'),
   kind: is(z.literal('fixed'), 'Rigidly merged into the link before it'),
   origin_mm: is(vector(), "Joint origin in the previous link's frame"),
-  turn_deg: may(vector(), 'Roll, pitch and yaw of the joint frame about fixed axes', [0, 0, 0]),
-  link: is(linkSchema, 'The part fixed on'),
+  turn_deg: may(vector(), 'Roll, pitch and yaw of the joint frame about fixed axes: Rz(yaw) Ry(pitch) Rx(roll)', {
+    default: [0, 0, 0],
+  }),
+  link: linkSchema,
 });
 
 const jointSchema = z.discriminatedUnion('kind', [revoluteSchema, fixedSchema]);
@@ -243,7 +256,7 @@ const caseSchema = z.strictObject({
     }),
     'Speeds and accelerations of this case; at rest where left out',
   ),
-  factor: may(aboveZero(), 'Multiplies every load of the case', 1),
+  factor: may(aboveZero(), 'Multiplies every load of the case', { default: 1 }),
 });
 
 const zone = (pattern: RegExp, example: string) =>
@@ -260,15 +273,17 @@ const rolling = () => ({
   Y: may(between(0, 20), "Maker's dynamic axial factor for Fa/Fr above e"),
   Y0: may(between(0, 20), "Maker's static axial factor"),
   f0: may(between(1, 30), "Maker's geometry factor f0 of a ball bearing"),
-  pitch_diameter_mm: may(aboveZero(), 'Pitch diameter of the rolling elements', 'mean of bore and outside diameter'),
+  pitch_diameter_mm: may(aboveZero(), 'Pitch diameter of the rolling elements', {
+    otherwise: 'mean of bore and outside diameter',
+  }),
   ball_diameter_mm: may(aboveZero(), 'Diameter of a ball or roller'),
   balls: may(z.int().check(z.gte(3), z.lte(1000)), 'Number of balls or rollers in one row'),
-  rows: may(
-    z.union([z.literal(1), z.literal(2)], { error: '1 or 2' }),
-    'Rows of rolling elements',
-    '1, or 2 for a self-aligning ball bearing',
-  ),
-  clearance: may(z.enum(['C2', 'CN', 'C3', 'C4', 'C5']), 'Group of radial internal clearance, ISO 5753-1', 'CN'),
+  rows: may(z.union([z.literal(1), z.literal(2)], { error: '1 or 2' }), 'Rows of rolling elements', {
+    otherwise: '1, or 2 for a self-aligning ball bearing',
+  }),
+  clearance: may(z.enum(['C2', 'CN', 'C3', 'C4', 'C5']), 'Group of radial internal clearance, ISO 5753-1', {
+    default: 'CN',
+  }),
   clearance_um: may(
     z.tuple([notNegative(), notNegative()]),
     'Measured radial internal clearance (diametral play), from and to; instead of `clearance`',
@@ -365,17 +380,19 @@ export const armFileSchema = z.strictObject({
   tip: is(
     z.strictObject({
       origin_mm: is(vector(), "Origin of the tip frame in the last link's frame"),
-      turn_deg: may(vector(), 'Roll, pitch and yaw of the tip frame about fixed axes', [0, 0, 0]),
+      turn_deg: may(vector(), 'Roll, pitch and yaw of the tip frame about fixed axes: Rz(yaw) Ry(pitch) Rx(roll)', {
+        default: [0, 0, 0],
+      }),
     }),
     'Where payload and tip force act',
   ),
-  cases: may(z.array(caseSchema).check(z.maxLength(MAX_CASES)), 'Load cases; with none there is one, `own weight`'),
+  cases: may(z.array(caseSchema).check(z.maxLength(MAX_CASES)), 'Load cases', { otherwise: 'one case, `own weight`' }),
   bearings: may(z.record(name(), bearingSchema), 'Table of bearings by name'),
   duty: may(
     z.array(segmentSchema).check(z.minLength(1), z.maxLength(MAX_CASES)),
     'How the time is spent, for the rating life',
   ),
-  targets: may(targetsSchema, 'What the design must reach; each has a stated default where left out'),
+  targets: may(targetsSchema, 'What the design must reach; each left out has a stated default'),
 });
 
 /** An arm file as it stands: millimetres, degrees, nothing filled in. The page edits this; `armFromFile` makes the SI `Arm`. */

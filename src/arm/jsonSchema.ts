@@ -8,6 +8,8 @@ export interface JsonSchema {
   readonly type?: string;
   readonly description?: string;
   readonly default?: unknown;
+  /** Words for a default that is no fixed value; folded into the description of the published schema. */
+  readonly otherwise?: string;
   readonly const?: unknown;
   readonly enum?: readonly unknown[];
   readonly properties?: Readonly<Record<string, JsonSchema>>;
@@ -18,14 +20,28 @@ export interface JsonSchema {
   readonly oneOf?: readonly JsonSchema[];
 }
 
-/** The JSON Schema of an arm file; `models/arm.schema.json` is this, and a test holds the two equal. */
-export function armJsonSchema(): JsonSchema {
-  const schema = z.toJSONSchema(armFileSchema, { target: 'draft-07', metadata: fieldAbout, io: 'input' });
+function generate(fold: boolean): JsonSchema {
+  const schema = z.toJSONSchema(armFileSchema, {
+    target: 'draft-07',
+    metadata: fieldAbout,
+    io: 'input',
+    override: ({ jsonSchema }) => {
+      const about = jsonSchema as { description?: string; otherwise?: string };
+      if (!fold || about.otherwise === undefined) return;
+      about.description += `; left out: ${about.otherwise}`;
+      delete about.otherwise;
+    },
+  });
   return {
     title: 'Arm file',
     description: 'A serial arm with its bearings, loads and targets',
     ...schema,
   } as JsonSchema;
+}
+
+/** The JSON Schema of an arm file; `models/arm.schema.json` is this, and a test holds the two equal. */
+export function armJsonSchema(): JsonSchema {
+  return generate(true);
 }
 
 /** One row of the field reference. */
@@ -34,7 +50,7 @@ export interface FieldRow {
   readonly path: string;
   readonly unit: string;
   readonly meaning: string;
-  /** Kinds (clevis, belt, needle …) that have the field; empty: all. */
+  /** Kinds (clevis, belt, needle …) that have the field, or `all but` one of many; empty: all. */
   readonly kinds: readonly string[];
   readonly required: boolean;
   /** What stands for it when it is left out; empty: nothing. */
@@ -52,8 +68,12 @@ function kindsOf(schema: JsonSchema): readonly string[] {
   return (kind.enum ?? [kind.const]).map(String);
 }
 
-function defaultText(value: unknown): string {
-  return value === undefined ? '' : typeof value === 'string' ? value : JSON.stringify(value).replaceAll(',', ', ');
+function defaultText(field: JsonSchema): string {
+  if (field.otherwise !== undefined) return field.otherwise;
+  if (field.default === undefined) return '';
+  return typeof field.default === 'string'
+    ? `\`${field.default}\``
+    : JSON.stringify(field.default).replaceAll(',', ', ');
 }
 
 /** The description, with the values the field may take where they are few. */
@@ -77,8 +97,10 @@ function collect(schema: JsonSchema, path: string, kinds: readonly string[], row
     const at = path === '' ? key : `${path}.${key}`;
     const seen = rows.get(at);
     if (seen) {
-      // The field that tells the kinds apart says what each of them is.
-      if (key === 'kind' || key === 'arrangement') seen.meaning += `; ${meaningOf(field)}`;
+      const meaning = meaningOf(field);
+      // The field that tells the kinds apart says what each of them is; another may mean something else in another kind.
+      if (key === 'kind' || key === 'arrangement') seen.meaning += `; ${meaning}`;
+      else if (!seen.meaning.includes(meaning)) seen.meaning += `; ${kinds.join(', ')}: ${meaning}`;
       seen.kinds.push(...kinds);
     } else {
       rows.set(at, {
@@ -87,7 +109,7 @@ function collect(schema: JsonSchema, path: string, kinds: readonly string[], row
         meaning: meaningOf(field),
         kinds: [...kinds],
         required: schema.required?.includes(key) ?? false,
-        default: defaultText(field.default),
+        default: defaultText(field),
       });
     }
     collect(field, at, [], rows);
@@ -97,15 +119,13 @@ function collect(schema: JsonSchema, path: string, kinds: readonly string[], row
 /** Rows of the field reference, from the top of the file down, for the README. */
 export function fieldReference(): readonly FieldRow[] {
   const rows = new Map<string, OpenRow>();
-  const schema = armJsonSchema();
-  collect(schema, '', [], rows);
+  collect(generate(false), '', [], rows);
   const all = new Map([...rows.values()].map((row) => [row.path, row]));
   return [...rows.values()].map((row) => {
-    // A field that all kinds of its object have needs no list of them: the discriminator's row has them all.
     const parent = row.path.slice(0, row.path.lastIndexOf('.'));
-    const kind = all.get(`${parent}.arrangement`) ?? all.get(`${parent}.kind`);
-    return kind && kind.kinds.length === row.kinds.length
-      ? { ...row, kinds: row.path === kind.path ? row.kinds : [] }
-      : row;
+    const kinds = all.get(`${parent}.arrangement`)?.kinds ?? all.get(`${parent}.kind`)?.kinds ?? [];
+    const without = kinds.filter((kind) => !row.kinds.includes(kind));
+    if (row.kinds.length === 0 || without.length === 0) return { ...row, kinds: [] };
+    return kinds.length > 4 && without.length === 1 ? { ...row, kinds: [`all but ${without[0]}`] } : row;
   });
 }

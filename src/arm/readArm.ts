@@ -16,8 +16,8 @@ export type ArmReading =
 /** More issues than anybody reads; the rest is counted. */
 const MAX_ISSUES = 1000;
 
-function startsWith(path: IssuePath, start: IssuePath): boolean {
-  return start.length <= path.length && start.every((step, i) => step === path[i]);
+function samePath(a: IssuePath, b: IssuePath): boolean {
+  return a.length === b.length && a.every((step, i) => step === b[i]);
 }
 
 function atMost(issues: readonly Issue[]): readonly Issue[] {
@@ -42,10 +42,7 @@ export function readArmValue(value: unknown): ArmReading {
     bounds.map((issue) => issue.path),
   );
   // A part left out for its size has its issue already: that it is missing now says nothing new.
-  const fields =
-    bounds.length > 0 && within === undefined
-      ? []
-      : schemaIssues(within).filter((issue) => !bounds.some((bound) => startsWith(bound.path, issue.path)));
+  const fields = schemaIssues(within).filter((issue) => !bounds.some((bound) => samePath(bound.path, issue.path)));
   const known = without(
     within,
     fields.map((issue) => issue.path),

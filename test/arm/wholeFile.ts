@@ -1,0 +1,170 @@
+import type { ArmFile } from '../../src/arm/armFile.ts';
+
+/**
+ * A sound file that uses every part of the schema, for tests to break and to read. A fresh value each time. Three joints: a clevis with a gear, a
+ * cantilever with a belt and a stepped shaft, a ring; a fixed joint on the last link.
+ */
+export function wholeFile(): ArmFile {
+  return structuredClone(WHOLE);
+}
+
+const WHOLE: ArmFile = {
+  armload: 1,
+  name: 'Potting arm',
+  note: 'Invented for tests.',
+  gravity_m_s2: [0, 0, -9.80665],
+  joints: [
+    {
+      name: 'shoulder',
+      kind: 'revolute',
+      origin_mm: [0, 0, 250],
+      turn_deg: [90, 0, 0],
+      axis: [0, 0, 2],
+      travel_deg: [-30, 120],
+      link: {
+        name: 'upper arm',
+        mass_kg: 4,
+        centre_mm: [200, 0, 0],
+        inertia_kg_m2: { xx: 0.005, yy: 0.06, zz: 0.062, xy: 0.001, xz: 0, yz: 0 },
+      },
+      support: {
+        arrangement: 'clevis',
+        hub_mm: 5,
+        span_mm: 80,
+        offset_mm: -10,
+        thrust: 'both',
+        adjusted: 'back-to-back',
+        bearings: { A: 'angular', B: 'tapered' },
+        shaft: { diameter_mm: 20, bore_mm: 6, material: 'steel-c45', turns_with: 'housing', finish: 'ground' },
+      },
+      drive: { kind: 'gear', station_mm: 60, radius_mm: 40, pressure_angle_deg: 20, mesh_deg: 90 },
+    },
+    {
+      name: 'elbow',
+      kind: 'revolute',
+      origin_mm: [400, 0, 0],
+      axis: [0, 0, -1],
+      travel_deg: [-150, 0],
+      link: { mass_kg: 2, centre_mm: [150, 0, 0], inertia_kg_m2: { xx: 0.002, yy: 0.02, zz: 0.02 } },
+      support: {
+        arrangement: 'cantilever',
+        hub_mm: 0,
+        span_mm: 40,
+        overhang_mm: 20,
+        side: '+',
+        thrust: 'A',
+        bearings: { A: 'groove', B: 'bush' },
+        shaft: {
+          diameter_mm: 20,
+          bore_mm: 5,
+          sections: [
+            {
+              from_mm: -10,
+              to_mm: 40,
+              diameter_mm: 20,
+              bending_factor: 1.8,
+              torsion_factor: 1.5,
+              notch_radius_mm: 0.8,
+            },
+            { from_mm: 40, to_mm: 70, diameter_mm: 15, bore_mm: 4 },
+          ],
+        },
+      },
+      drive: { kind: 'belt', station_mm: 80, radius_mm: 25, pull_deg: 180, pretension_N: 100, tension_ratio: 1.3 },
+    },
+    {
+      name: 'wrist',
+      kind: 'revolute',
+      origin_mm: [300, 0, 0],
+      turn_deg: [0, 90, 0],
+      axis: [0, 0, 1],
+      travel_deg: [-180, 180],
+      link: { mass_kg: 1, centre_mm: [0, 0, 30], inertia_kg_m2: { xx: 0.001, yy: 0.001, zz: 0.001 } },
+      support: { arrangement: 'ring', hub_mm: 10, station_mm: 0, bearing: 'ring', shaft: { diameter_mm: 50 } },
+    },
+    {
+      name: 'flange',
+      kind: 'fixed',
+      origin_mm: [0, 0, 50],
+      turn_deg: [0, 0, 45],
+      link: { mass_kg: 0.5, centre_mm: [0, 0, 20], inertia_kg_m2: { xx: 0.0004, yy: 0.0004, zz: 0.0005 } },
+    },
+  ],
+  tip: { origin_mm: [0, 0, 60], turn_deg: [180, 0, 0] },
+  cases: [
+    {
+      name: 'carry',
+      payload: { mass_kg: 3, centre_mm: [0, 0, 40], inertia_kg_m2: { xx: 0.01, yy: 0.01, zz: 0.01 } },
+      motion: { speed_deg_s: [60, 90, 180], accel_deg_s2: [200, 300, 600] },
+      factor: 1.2,
+    },
+    { name: 'push', tip_force: { force_N: 50, direction: 'any' } },
+    { name: 'press', tip_force: { force_N: 50, direction: { tool: [0, 0, -2] } } },
+    { name: 'pull', tip_force: { force_N: 50, direction: { base: [3, 0, 4] } } },
+  ],
+  bearings: {
+    groove: {
+      kind: 'deep-groove',
+      bore_mm: 20,
+      outer_mm: 42,
+      width_mm: 12,
+      C_N: 9400,
+      C0_N: 5000,
+      f0: 13.9,
+      pitch_diameter_mm: 31,
+      ball_diameter_mm: 6.35,
+      balls: 9,
+      rows: 1,
+      clearance: 'C3',
+      shaft_fit: 'k5',
+      housing_fit: 'H7',
+      misalignment_deg: 0.1,
+      stiffness_N_um: 120,
+      source: 'invented',
+    },
+    angular: {
+      kind: 'angular-contact',
+      bore_mm: 20,
+      outer_mm: 42,
+      width_mm: 12,
+      contact_angle_deg: 25,
+      clearance_um: [2, 8],
+    },
+    tapered: { kind: 'tapered-roller', bore_mm: 20, outer_mm: 42, width_mm: 15, e: 0.37, Y: 1.6, Y0: 0.9 },
+    ring: { kind: 'crossed-roller', bore_mm: 50, outer_mm: 80, width_mm: 13 },
+    bush: {
+      kind: 'plain-bushing',
+      bore_mm: 15,
+      outer_mm: 21,
+      width_mm: 15,
+      pressure_limit_MPa: 10,
+      speed_limit_m_s: 2,
+      pv_limit_MPa_m_s: 1.5,
+      clearance_um: 30,
+      stiffness_N_um: 80,
+      source: 'invented',
+    },
+  },
+  duty: [
+    {
+      case: 'carry',
+      share: 0.75,
+      path: [
+        { time_s: 0, pose_deg: [0, 0, 0] },
+        { time_s: 2.5, pose_deg: [120, -150, 720] },
+      ],
+    },
+    { case: 'push', share: 0.25, anywhere: { cycles_per_min: [2, 3, 4] } },
+  ],
+  targets: {
+    static_safety: 1.5,
+    life_h: 20000,
+    reliability: 0.95,
+    shaft_yield_safety: 2,
+    shaft_fatigue_safety: 1.5,
+    slope_mrad: 1,
+    tip_error_mm: 0.5,
+    pressure_MPa: 8,
+    pv_MPa_m_s: 1.2,
+  },
+};
