@@ -2,6 +2,7 @@
 export * from './criteria.ts';
 export * from './endurance.ts';
 export * from './fatigue.ts';
+export * from './jointShaft.ts';
 export * from './layout.ts';
 export * from './loadCycle.ts';
 export * from './notch.ts';

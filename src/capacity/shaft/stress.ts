@@ -43,9 +43,16 @@ export interface SectionStress {
 }
 
 /**
- * Transverse shear of a round bar or tube peaks at the neutral axis: 4V/3A · (R² + Rr + r²)/(R² + r²) (Shigley Table 3-2 for the solid
- * bar 4V/3A and the thin tube 2V/A; the general form by V Q / I b).
+ * Transverse shear stress at the neutral axis of a round bar or tube under the shear force V (N):
+ * 4V/3A · (R² + Rr + r²)/(R² + r²) (Shigley Table 3-2 for the solid bar 4V/3A and the thin tube 2V/A; the general form by V Q / I b).
  */
+export function transverseShear(shear: number, section: RoundSection): number {
+  const R = section.diameter / 2;
+  const r = section.bore / 2;
+  return ((4 * shear) / (3 * section.area)) * ((R * R + R * r + r * r) / (R * R + r * r));
+}
+
+/** Stresses of the section under the load, with the notch factors; NaN where a load is negative or a factor below 1. */
 export function sectionStress(load: SectionLoad, section: RoundSection, factors: NotchFactors): SectionStress {
   const { moment, torque, axial, shear } = load;
   const sound = moment >= 0 && torque >= 0 && axial >= 0 && shear >= 0 && factors.bending >= 1 && factors.torsion >= 1;
@@ -53,9 +60,7 @@ export function sectionStress(load: SectionLoad, section: RoundSection, factors:
   const nominalTorsion = torque / section.Wp;
   const torsion = factors.torsion * nominalTorsion;
   const push = axial / section.area;
-  const R = section.diameter / 2;
-  const r = section.bore / 2;
-  const across = ((4 * shear) / (3 * section.area)) * ((R * R + R * r + r * r) / (R * R + r * r));
+  const across = transverseShear(shear, section);
   const surface = Math.hypot(bending + push, Math.sqrt(3) * torsion);
   const neutral = Math.hypot(push, Math.sqrt(3) * (across + nominalTorsion));
   return {
