@@ -1,1 +1,106 @@
-console.error('not built yet');
+#!/usr/bin/env node
+/** The command line. Verbs load on demand, so that each starts as fast as what it needs. */
+import { Command, CommanderError, type OptionValues } from 'commander';
+import { version } from '../../package.json';
+import { EXIT, type ExitCode, UsageError } from './exit.ts';
+import { angleList } from './optionValues.ts';
+
+const FILE_HELP = 'arm file (*.arm.json), or - for standard input';
+
+const collect = (name: string, before: readonly string[] = []): readonly string[] => [...before, name];
+
+function buildProgram(end: (code: ExitCode) => void): Command {
+  const program = new Command('armload')
+    .description(
+      'What the bearings of a serial arm must carry, in which pose. Reads an arm file: joints with their bearings, links, load cases.',
+    )
+    .version(version)
+    .helpCommand(false)
+    .configureHelp({ showGlobalOptions: false })
+    .exitOverride()
+    .configureOutput({
+      outputError: (text, write) =>
+        write(
+          `armload: ${text
+            .replace(/^error: /, '')
+            .trim()
+            .replaceAll(/\s*\n\s*/g, ' ')}\n`,
+        ),
+    })
+    .addHelpText(
+      'after',
+      `
+Examples:
+  armload check models/picking-arm.arm.json
+  armload pose models/picking-arm.arm.json --at=0,-30,60,0,45
+  armload sweep models/picking-arm.arm.json --step 15
+  armload compare models/picking-arm.arm.json --joint elbow
+
+Angles are degrees, one for each revolute joint from the ground to the tip. "armload <verb> --help" tells more.
+Exit codes: 0 all well; 1 a check is over its limit (with --strict also: not assessed); 2 the file is not valid;
+3 wrong usage or internal error; 130 interrupted.
+
+A design aid: results are to be checked by a competent engineer.`,
+    );
+  const verb = (
+    name: string,
+    about: string,
+    run: (file: string, options: OptionValues) => Promise<ExitCode>,
+    example: string,
+  ) =>
+    program
+      .command(name)
+      .description(about)
+      .argument('<file>', FILE_HELP)
+      .option('--json', 'one JSON document on standard output instead of tables')
+      .action(async (file: string, options: OptionValues) => end(await run(file, options)))
+      .addHelpText('after', `\nExample:\n  ${example}`);
+
+  verb(
+    'pose',
+    'Joint loads and bearing loads at one pose.',
+    async (file, options) => (await import('./pose.ts')).pose(file, options as never),
+    'armload pose models/picking-arm.arm.json --at=0,-30,60,0,45 --case carry',
+  )
+    .requiredOption('--at <angles>', 'joint angles in degrees, from the ground to the tip, such as -10,20', angleList)
+    .option('--case <name>', 'only this load case; may be given again', collect);
+
+  verb(
+    'check',
+    'Reads the file and lists its problems, or says it is sound.',
+    async (file, options) => (await import('./check.ts')).check(file, options),
+    'armload check models/picking-arm.arm.json',
+  );
+  return program;
+}
+
+function fail(error: unknown): ExitCode {
+  if (error instanceof CommanderError) return error.exitCode === 0 ? EXIT.pass : EXIT.usage;
+  const { name, message } = error instanceof Error ? error : { name: '', message: String(error) };
+  if (name === 'FileProblems') return EXIT.invalidFile;
+  const text = message.replaceAll(/\s*\n\s*/g, ' ');
+  process.stderr.write(error instanceof UsageError ? `armload: ${text}\n` : `armload: internal error: ${text}\n`);
+  return EXIT.usage;
+}
+
+/** A reader that has seen enough (`| head`) closes the pipe: that is no error. */
+function endQuietlyOnClosedPipe(): void {
+  for (const stream of [process.stdout, process.stderr]) {
+    stream.on('error', (error: NodeJS.ErrnoException) => {
+      process.exit(error.code === 'EPIPE' ? (process.exitCode ?? EXIT.pass) : EXIT.usage);
+    });
+  }
+}
+
+async function main(): Promise<void> {
+  endQuietlyOnClosedPipe();
+  try {
+    await buildProgram((code) => {
+      process.exitCode = code;
+    }).parseAsync();
+  } catch (error) {
+    process.exitCode = fail(error);
+  }
+}
+
+void main();

@@ -1,0 +1,91 @@
+/** `armload pose`: joint loads and bearing loads at one pose. */
+import { bearingLoadTable, jointLoadTable } from '../report/poseTable.ts';
+import { degrees, poseText } from '../report/shown.ts';
+import { outsideTravel, poseArm } from '../studies/poseArm.ts';
+import type { PoseJoint, PoseResult } from '../studies/results.ts';
+import { toSI } from '../units/unit.ts';
+import { chooseCases } from './chooseCases.ts';
+import { drawTable } from './drawTable.ts';
+import { EXIT, type ExitCode, UsageError } from './exit.ts';
+import { openArm } from './openArm.ts';
+import { print, printCaution, printJson, warn, warnAll } from './output.ts';
+
+export interface PoseOptions {
+  /** Degrees. */
+  readonly at: readonly number[];
+  readonly case?: readonly string[];
+  readonly json?: boolean;
+}
+
+export async function pose(file: string, options: PoseOptions): Promise<ExitCode> {
+  const { arm, chain } = await openArm(file, options.json === true);
+  if (options.at.length !== chain.n) {
+    const angles = `${options.at.length} ${options.at.length === 1 ? 'angle' : 'angles'}`;
+    throw new UsageError(`--at has ${angles}, but the arm turns in ${chain.n}: ${chain.names.join(', ')}`);
+  }
+  const cases = chooseCases(arm, options.case);
+  const radians = options.at.map((angle) => toSI(angle, '°'));
+  const warnings = outsideTravel(chain, radians).map(
+    ({ joint, angle, from, to }) =>
+      `joint "${joint}" at ${degrees(angle)}° is outside its travel of ${degrees(from)}° to ${degrees(to)}°`,
+  );
+  warnAll(warnings);
+  const results = poseArm(arm, chain, radians, cases);
+  if (options.json) printJson(arm, { results: results.map(resultObject), warnings });
+  else {
+    print(`${arm.name}: loads at the pose ${poseText(radians)} °\n`);
+    for (const result of results) print(`${resultText(result)}\n`);
+    print("Loads ON the joint and its bearings, in the frame of the joint's housing; moments about the joint origin.");
+    printCaution();
+  }
+  if (results.every((result) => result.joints.every(computed))) return EXIT.pass;
+  warn('some loads could not be computed');
+  return EXIT.over;
+}
+
+function computed(joint: PoseJoint): boolean {
+  const bearings = Object.values(joint.bearings);
+  const numbers = [...joint.force, ...joint.moment, ...bearings.flatMap((b) => [b.radial, b.axial, b.moment ?? 0])];
+  return numbers.every(Number.isFinite);
+}
+
+function resultText(result: PoseResult): string {
+  const bearings = bearingLoadTable(result);
+  return [
+    `Case "${result.case}"`,
+    ...(result.free
+      ? [`Free: ${result.free}. Joint loads are without it; each bearing load is its own worst over it.`]
+      : []),
+    '',
+    drawTable(jointLoadTable(result)),
+    ...(bearings.rows.length > 0
+      ? [drawTable(bearings)]
+      : ['No joint has a support, so there are no bearing loads.\n']),
+  ].join('\n');
+}
+
+/** The contract's shape: degrees, newtons, vectors in the housing frame. */
+function resultObject(result: PoseResult): Readonly<Record<string, unknown>> {
+  return {
+    case: result.case,
+    pose_deg: result.pose.map(degrees),
+    free: result.free,
+    joints: result.joints.map((joint) => ({
+      joint: joint.joint,
+      force_N: joint.force,
+      moment_Nm: joint.moment,
+      torque_Nm: joint.torque,
+      bearings: Object.fromEntries(
+        Object.entries(joint.bearings).map(([name, load]) => [
+          name,
+          {
+            radial_N: load.radial,
+            radial_vector_N: load.radialVector,
+            axial_N: load.axial,
+            ...(load.moment === null ? {} : { moment_Nm: load.moment }),
+          },
+        ]),
+      ),
+    })),
+  };
+}
