@@ -60,7 +60,7 @@ export function freeScratch(n: number): FreeScratch {
   return { form: newReducedForm(n), trial: newFreeWorst(n), e: flat(3), samples: flat(SAMPLES), cuts: flat(2 * n) };
 }
 
-const SAMPLES = 16;
+const SAMPLES = 24;
 /** Directions to the faces, edges and corners of a cube. */
 const CUBE: readonly Numbers[] = [-1, 0, 1].flatMap((x) =>
   [-1, 0, 1].flatMap((y) =>
@@ -189,10 +189,14 @@ function maximise(check: CheckForm, load: ChainCase, at: PoseLoad, out: FreeWors
 /** Local maxima of a ring of samples, and one direction of every arc on which the signs of the accelerations stay. */
 function startsOnCircle(scratch: FreeScratch, from: () => void): void {
   const { form: p, e, samples, cuts } = scratch;
+  if (!p.hasMotion && turnToBest(p, e)) {
+    from();
+    return;
+  }
   for (let k = 0; k < SAMPLES; k++) {
     turn(e, (2 * Math.PI * k) / SAMPLES);
     pick(p, e);
-    samples[k] = pickedValue(p);
+    samples[k] = e[0]! * p.y[0]! + e[1]! * p.y[1]! + p.y[LIN]!;
   }
   for (let k = 0; k < SAMPLES; k++) {
     const here = samples[k]!;
@@ -218,6 +222,46 @@ function startsOnCircle(scratch: FreeScratch, from: () => void): void {
     turn(e, (sorted[k]! + next) / 2);
     from();
   }
+}
+
+/**
+ * A tip force alone, with no linear part: in the principal axes of G = Σ tip tipᵀ the value y·e + √(eᵀ G e) is even in both
+ * components of e apart from y·e, so the best e has the signs of y. There, with λ1 ≥ λ2, its slope over (sin cos) is
+ * y2/sin - y1/cos - (λ1 - λ2)/√(eᵀ G e), which only falls: one zero, by bisection. False where the form has a linear part.
+ */
+function turnToBest(p: ReducedForm, e: Flat): boolean {
+  const { tip, fixed } = p;
+  if (tip[9] !== 0 || tip[10] !== 0 || tip[11] !== 0) return false;
+  let [xx, yy, xy] = [0, 0, 0];
+  for (let k = 0; k < 3; k++) {
+    xx += tip[k]! * tip[k]!;
+    yy += tip[3 + k]! * tip[3 + k]!;
+    xy += tip[k]! * tip[3 + k]!;
+  }
+  const axis = Math.atan2(2 * xy, xx - yy) / 2;
+  const ax = Math.cos(axis);
+  const ay = Math.sin(axis);
+  const major = ax * ax * xx + ay * ay * yy + 2 * ax * ay * xy;
+  const minor = Math.max(0, xx + yy - major);
+  const y1 = ax * fixed[0]! + ay * fixed[1]!;
+  const y2 = ax * fixed[1]! - ay * fixed[0]!;
+  let low = 0;
+  let high = Math.PI / 2;
+  for (let k = 0; k < 60; k++) {
+    const middle = (low + high) / 2;
+    if (middle === low || middle === high) break;
+    const c = Math.cos(middle);
+    const s = Math.sin(middle);
+    const root = Math.sqrt(major * c * c + minor * s * s);
+    if ((Math.abs(y2) * c - Math.abs(y1) * s) * root > (major - minor) * s * c) low = middle;
+    else high = middle;
+  }
+  const along = Math.cos(low) * (y1 < 0 ? -1 : 1);
+  const across = Math.sin(low) * (y2 < 0 ? -1 : 1);
+  e[0] = ax * along - ay * across;
+  e[1] = ay * along + ax * across;
+  e[2] = 0;
+  return true;
 }
 
 function turn(e: Flat, angle: number): void {
@@ -305,8 +349,9 @@ function climb(p: ReducedForm, e: Flat): number {
   for (let step = 0; step < 400; step++) {
     const size = Math.sqrt(p.y[0]! ** 2 + p.y[1]! ** 2 + p.y[2]! ** 2);
     if (!(size > 0)) return value;
-    for (let k = 0; k < 3; k++) e[k] = p.y[k]! / size;
-    if (p.rows === 2 && p.hasTip) newton(p, e);
+    // on a circle the turn stays near where it is: the way along y may leave the maximum that a sample found
+    if (p.rows === 2 && p.hasTip && newton(p, e)) step += 20;
+    else for (let k = 0; k < 3; k++) e[k] = p.y[k]! / size;
     pick(p, e);
     const next = pickedValue(p);
     if (!(next > value + 1e-15 * Math.abs(value))) return Math.max(next, value);
@@ -315,8 +360,11 @@ function climb(p: ReducedForm, e: Flat): number {
   return value;
 }
 
-/** With accelerations and speeds held, turns e (two rows) to the local maximum of Y·e + ‖N(e)‖ by Newton's method. */
-function newton(p: ReducedForm, e: Flat): void {
+/**
+ * With accelerations and speeds held, turns e (two rows) to the local maximum of Y·e + ‖N(e)‖ by Newton's method, uphill where the
+ * function is hollow. False where N vanishes on the way.
+ */
+function newton(p: ReducedForm, e: Flat): boolean {
   const { tip } = p;
   // Y: the rows without the tip force
   let yx = p.y[0]!;
@@ -342,17 +390,15 @@ function newton(p: ReducedForm, e: Flat): void {
       nl += N * (N - tip[9 + k]!);
     }
     const size = Math.sqrt(nn);
-    if (!(size > 0)) break;
+    if (!(size > 0)) return false;
     const slope = c * yy - s * yx + nd / size;
     const bend = -(c * yx + s * yy) + (dd - nl - (nd / size) ** 2) / size;
-    if (!(bend < 0)) break;
-    const move = Math.max(-0.3, Math.min(0.3, -slope / bend));
+    const move = bend < 0 ? Math.max(-0.2, Math.min(0.2, -slope / bend)) : 0.1 * Math.sign(slope);
     angle += move;
     if (Math.abs(move) < 1e-15) break;
   }
-  e[0] = Math.cos(angle);
-  e[1] = Math.sin(angle);
-  e[2] = 0;
+  turn(e, angle);
+  return true;
 }
 
 /** Turns the picked parts into a choice and its joint load (`trial`), and keeps it in `out` where the whole check is worst yet. */
