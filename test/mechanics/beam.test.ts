@@ -159,6 +159,28 @@ describe('uniform shaft: properties', () => {
     );
   });
 
+  it('trade facts: a load between shares as the opposite arms and exceeds itself nowhere; moments peak at F a and F b c/D', () => {
+    const length = fc.double({ min: 0.01, max: 1, noNaN: true });
+    fc.assert(
+      fc.property(length, length, fc.double({ min: 1, max: 1e4, noNaN: true }), (b, c, F) => {
+        const D = b + c;
+        const between = solved(0, D, 1, [{ station: b, force: -F, couple: 0 }]);
+        near(between.reactionA, (F * c) / D, 1e-9);
+        near(between.reactionB, (F * b) / D, 1e-9);
+        expect(Math.max(between.reactionA, between.reactionB)).toBeLessThanOrEqual(F);
+        near(uniformBeamAt(between, b).momentBefore, (F * b * c) / D, 1e-9);
+        const overhung = solved(0, b, 1, [{ station: b + c, force: -F, couple: 0 }]);
+        near(uniformBeamAt(overhung, b).momentBefore, -F * c, 1e-9);
+        // The further apart, the lower the reactions, and the near one never falls below the load itself.
+        const wider = solved(0, 2 * b, 1, [{ station: 2 * b + c, force: -F, couple: 0 }]);
+        expect(wider.reactionB).toBeLessThan(overhung.reactionB);
+        expect(wider.reactionB).toBeGreaterThanOrEqual(F);
+        expect(Math.abs(wider.reactionA)).toBeLessThan(Math.abs(overhung.reactionA));
+      }),
+      { seed: 44, numRuns: 200 },
+    );
+  });
+
   it('elastic supports give R/k, leave the reactions alone, and tend to the rigid ones', () => {
     const loads = [
       { station: 0.13, force: -900, couple: 4 },

@@ -68,13 +68,28 @@ export function jointShaft(joint: Joint, supports: readonly BeamSupport[]): Asse
   };
 }
 
+/** Forms without those that say the same as an earlier one: the two sides of a point differ only where a load enters. */
+function distinct(forms: readonly Form[]): readonly Form[] {
+  const numbers = (f: Form) => [...f.P, ...f.c, ...f.l];
+  const alike = (a: Form, b: Form) => {
+    if (a.torqueFrom !== b.torqueFrom || a.torqueTo !== b.torqueTo) return false;
+    const other = numbers(b);
+    const size = other.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+    return numbers(a).every((value, i) => Math.abs(value - other[i]!) <= SAME * size);
+  };
+  return forms.filter((f, i) => !forms.slice(0, i).some((earlier) => alike(earlier, f)));
+}
+
+/** Difference below which two coefficients are one, as a share of the largest of the form; far below what a load is known to. */
+const SAME = 1e-12;
+
 /** Forms of the bending moment at a point, N·m, on both sides of it. */
 export function momentForms(shaft: JointShaft, point: number): Assessed<readonly Form[]> {
   const { station } = shaft.points[point]!;
   const before = shaftForms(shaft.beam, shaft.loading, station, 'momentBefore');
   if ('unassessed' in before) return before;
   const after = shaftForms(shaft.beam, shaft.loading, station, 'momentAfter');
-  return 'unassessed' in after ? after : { value: [...before, ...after] };
+  return 'unassessed' in after ? after : { value: distinct([...before, ...after]) };
 }
 
 /**
@@ -113,7 +128,7 @@ export function stressForms(shaft: JointShaft, point: number): Assessed<readonly
       }
     }
   }
-  return { value: [...surface, ...neutral] };
+  return { value: [...surface, ...distinct(neutral)] };
 }
 
 /** Forms of the slope at a station (rad), such as that of a bearing, or of the deflection there (m), such as that of the hub. */
