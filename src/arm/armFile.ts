@@ -327,21 +327,19 @@ const bushingSchema = z.strictObject({
 
 const bearingSchema = z.discriminatedUnion('kind', [rollingSchema, bushingSchema]);
 
+const pathRowSchema = z.strictObject({
+  time_s: is(anyNumber(), 'Time of the pose; the times of a path rise'),
+  pose_deg: is(z.array(anyNumber()).check(z.maxLength(MAX_JOINTS)), 'Joint angles, one number a revolute joint'),
+});
+
+/** Rows of a path, any number of them. */
+export const pathRowsSchema = z.array(pathRowSchema);
+
 const segmentSchema = z.strictObject({
   case: is(name(), 'Name of the case that loads the arm in this segment'),
   share: is(between(SMALLEST, 1), 'Share of the time; the shares of a duty sum to 1'),
   path: may(
-    z
-      .array(
-        z.strictObject({
-          time_s: is(anyNumber(), 'Time of the pose; the times of a path rise'),
-          pose_deg: is(
-            z.array(anyNumber()).check(z.maxLength(MAX_JOINTS)),
-            'Joint angles, one number a revolute joint',
-          ),
-        }),
-      )
-      .check(z.minLength(2), z.maxLength(MAX_PATH_ROWS)),
+    z.array(pathRowSchema).check(z.minLength(2), z.maxLength(MAX_PATH_ROWS)),
     'The way through the poses; either this or `anywhere`',
   ),
   anywhere: may(

@@ -12,9 +12,23 @@ export function isBuiltInName(key: string): boolean {
   return key in Object.prototype;
 }
 
-function longest(path: IssuePath): number {
-  if (path.length === 3 && path[0] === 'duty' && path[2] === 'path') return MAX_PATH_ROWS;
-  return MAX_JOINTS;
+/** A value and the way to it; paths are spelled out only for what is wrong. */
+interface Place {
+  readonly value: unknown;
+  readonly parent: Place | null;
+  readonly step: string | number;
+  readonly depth: number;
+}
+
+function pathOf(place: Place): (string | number)[] {
+  const path: (string | number)[] = [];
+  for (let at = place; at.parent; at = at.parent) path.push(at.step);
+  return path.reverse();
+}
+
+function longest(place: Place): number {
+  if (place.depth !== 3 || place.step !== 'path') return MAX_JOINTS;
+  return pathOf(place)[0] === 'duty' ? MAX_PATH_ROWS : MAX_JOINTS;
 }
 
 /**
@@ -23,50 +37,52 @@ function longest(path: IssuePath): number {
  */
 export function boundIssues(root: unknown): Issue[] {
   const issues: Issue[] = [];
-  const stack: { value: unknown; path: (string | number)[] }[] = [{ value: root, path: [] }];
+  const stack: Place[] = [{ value: root, parent: null, step: '', depth: 0 }];
   let values = 0;
   while (stack.length > 0) {
-    const { value, path } = stack.pop()!;
+    const place = stack.pop()!;
+    const { value } = place;
     if (++values > MAX_VALUES) {
       return [{ code: 'too-long', path: [], found: `more than ${MAX_VALUES} values`, expected: 'fewer' }];
     }
-    if (typeof value === 'string' && value.length > MAX_TEXT) {
-      issues.push({ code: 'too-long', path, found: `${value.length} characters`, expected: `at most ${MAX_TEXT}` });
-    } else if (Array.isArray(value)) {
-      if (path.length >= MAX_DEPTH) issues.push(tooDeep(value, path));
-      else if (value.length > longest(path)) {
-        issues.push({
-          code: 'wrong-length',
-          path,
-          found: `${value.length} entries`,
-          expected: `at most ${longest(path)}`,
-        });
-      } else for (let i = value.length - 1; i >= 0; i--) stack.push({ value: value[i], path: [...path, i] });
+    const report = (code: Issue['code'], found: string, expected: string, key?: string) => {
+      const path = pathOf(place);
+      issues.push({ code, path: key === undefined ? path : [...path, key], found, expected });
+    };
+    const inner = (key: string | number, part: unknown) => {
+      // Numbers and the like need no look of their own.
+      if (typeof part === 'string' || typeof part === 'object') {
+        stack.push({ value: part, parent: place, step: key, depth: place.depth + 1 });
+      }
+    };
+    if (typeof value === 'string') {
+      if (value.length > MAX_TEXT) report('too-long', `${value.length} characters`, `at most ${MAX_TEXT}`);
     } else if (typeof value === 'object' && value !== null) {
-      const keys = Object.keys(value);
-      if (path.length >= MAX_DEPTH) issues.push(tooDeep(value, path));
-      else if (keys.length > MAX_BEARINGS) {
-        issues.push({ code: 'wrong-length', path, found: `${keys.length} keys`, expected: `at most ${MAX_BEARINGS}` });
+      const list = Array.isArray(value);
+      const keys = list ? [] : Object.keys(value);
+      const length = list ? value.length : keys.length;
+      const most = list ? longest(place) : MAX_BEARINGS;
+      if (place.depth >= MAX_DEPTH) {
+        report('too-deep', `${describeValue(value)} ${place.depth} levels down`, `at most ${MAX_DEPTH} levels`);
+      } else if (length > most) {
+        report('wrong-length', `${length} ${list ? 'entries' : 'keys'}`, `at most ${most}`);
+      } else if (list) {
+        for (let i = length - 1; i >= 0; i--) inner(i, value[i]);
       } else {
         for (const key of keys.reverse()) {
-          if (isBuiltInName(key)) {
-            const what = 'another name: every object of the language has this one already';
-            issues.push({ code: 'unknown-key', path: [...path, key], found: JSON.stringify(key), expected: what });
-          } else stack.push({ value: (value as Record<string, unknown>)[key], path: [...path, key] });
+          if (!isBuiltInName(key)) inner(key, (value as Record<string, unknown>)[key]);
+          else
+            report(
+              'unknown-key',
+              JSON.stringify(key),
+              'another name: every object of the language has this one already',
+              key,
+            );
         }
       }
     }
   }
   return issues;
-}
-
-function tooDeep(value: unknown, path: IssuePath): Issue {
-  return {
-    code: 'too-deep',
-    path,
-    found: `${describeValue(value)} ${path.length} levels down`,
-    expected: `at most ${MAX_DEPTH} levels`,
-  };
 }
 
 interface Branch {

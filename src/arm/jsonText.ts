@@ -14,7 +14,7 @@ export interface JsonScan {
   readonly mistake: TextMistake | null;
   /** Paths whose last key stands twice in its object, in order, at most 100. */
   readonly duplicates: readonly { readonly path: IssuePath; readonly offset: number }[];
-  /** Offsets of the paths asked for (see `pathKey`): of the key in an object, of the value in a list. */
+  /** Offsets by `pathKey`: of the key in an object, of the value in a list. */
   readonly offsets: ReadonlyMap<string, number>;
 }
 
@@ -43,6 +43,32 @@ interface Level {
   /** Keys seen so far; null for a list. */
   readonly keys: Set<string> | null;
   step: string | number;
+  /** What is wanted below this object or list; null: nothing. */
+  readonly wanted: Wanted | null;
+}
+
+/** The wanted paths as a tree, so that a value costs one look-up. */
+interface Wanted {
+  readonly next: Map<string | number, Wanted>;
+  /** Key of the path in `offsets`. */
+  readonly key: string;
+}
+
+function wantedTree(paths: readonly IssuePath[]): Wanted | null {
+  if (paths.length === 0) return null;
+  const root: Wanted = { next: new Map(), key: pathKey([]) };
+  for (const path of paths) {
+    let node = root;
+    for (const [i, step] of path.entries()) {
+      let next = node.next.get(step);
+      if (!next) {
+        next = { next: new Map(), key: pathKey(path.slice(0, i + 1)) };
+        node.next.set(step, next);
+      }
+      node = next;
+    }
+  }
+  return root;
 }
 
 const ESCAPE = /\\(?:["\\/bfnrt]|u[0-9a-fA-F]{4})/y;
@@ -73,8 +99,8 @@ function show(text: string, offset: number): string {
   return JSON.stringify(part ? part[0] : text[offset]);
 }
 
-/** Scans the text once. `wanted` are path keys whose offsets are to be found; scanning stops at the first mistake. */
-export function scanJson(text: string, wanted: ReadonlySet<string> = new Set()): JsonScan {
+/** Scans the text once, up to the first mistake. The offsets of `paths`, and of all that leads to them, are noted. */
+export function scanJson(text: string, paths: readonly IssuePath[] = []): JsonScan {
   const duplicates: { path: IssuePath; offset: number }[] = [];
   const offsets = new Map<string, number>();
   const levels: Level[] = [];
@@ -86,10 +112,13 @@ export function scanJson(text: string, wanted: ReadonlySet<string> = new Set()):
     offsets,
   });
   const path = (): (string | number)[] => levels.map((level) => level.step);
+  const root = wantedTree(paths);
+  /** What is wanted of the value that begins now. */
+  let here: Wanted | null = null;
   const note = (where: number) => {
-    if (wanted.size === 0 || levels.length > 12) return;
-    const key = pathKey(path());
-    if (wanted.has(key) && !offsets.has(key)) offsets.set(key, where);
+    const level = levels.at(-1);
+    here = level ? (level.wanted?.next.get(level.step) ?? null) : root;
+    if (here && !offsets.has(here.key)) offsets.set(here.key, where);
   };
   const skip = () => {
     offset = at(SPACE, text, offset);
@@ -152,7 +181,7 @@ export function scanJson(text: string, wanted: ReadonlySet<string> = new Set()):
       }
       if (char === '{' || char === '[') {
         offset++;
-        levels.push(char === '{' ? { keys: new Set(), step: '' } : { keys: null, step: 0 });
+        levels.push(char === '{' ? { keys: new Set(), step: '', wanted: here } : { keys: null, step: 0, wanted: here });
         awaits = char === '{' ? 'key' : 'value';
         justOpened = true;
         continue;

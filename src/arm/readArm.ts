@@ -62,9 +62,10 @@ function failed(...issues: Issue[]): ArmReading {
 /** The nearest part of a path that stands in the text: a missing key is shown at the object that lacks it. */
 function placed(text: string, issues: readonly Issue[]): readonly Issue[] {
   if (issues.length === 0) return issues;
-  const wanted = new Set<string>();
-  for (const { path } of issues) for (let n = 0; n <= path.length; n++) wanted.add(pathKey(path.slice(0, n)));
-  const { offsets } = scanJson(text, wanted);
+  const { offsets } = scanJson(
+    text,
+    issues.map((issue) => issue.path),
+  );
   const found = issues.map((issue, order) => {
     let n = issue.path.length;
     while (n > 0 && !offsets.has(pathKey(issue.path.slice(0, n)))) n--;

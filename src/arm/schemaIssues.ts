@@ -1,14 +1,44 @@
 import * as z from 'zod/mini';
-import { armFileSchema, LARGEST, SMALLEST } from './armFile.ts';
+import { armFileSchema, LARGEST, pathRowsSchema, SMALLEST } from './armFile.ts';
 import { unitOfKey } from './fileUnits.ts';
 import { describeValue, type Issue, type IssueCode, type IssuePath } from './issue.ts';
 
 type SchemaIssue = z.core.$ZodIssue;
 
+/** Rows of a path that are checked at once; the schema library cannot pass on the issues of a hundred thousand. */
+const CHUNK = 2000;
+/** With this many issues in a path the rest of its rows is left unchecked: they tell nobody more. */
+const ENOUGH = 2000;
+
+function bySchema(schema: z.ZodMiniType, value: unknown, prefix: IssuePath, root: unknown): Issue[] {
+  const result = z.safeParse(schema, value);
+  return result.success ? [] : result.error.issues.flatMap((issue) => translate(issue, root, prefix));
+}
+
 /** What the schema alone finds wrong, in our own codes and words. Empty: `value` is an `ArmFile` as far as single fields tell. */
 export function schemaIssues(value: unknown): Issue[] {
-  const result = z.safeParse(armFileSchema, value);
-  return result.success ? [] : result.error.issues.flatMap((issue) => translate(issue, value, []));
+  const duty = valueAt(value, ['duty']);
+  const long = Array.isArray(duty)
+    ? duty.flatMap((segment, i) => {
+        const path = valueAt(segment, ['path']);
+        return Array.isArray(path) && path.length > CHUNK ? [{ i, path }] : [];
+      })
+    : [];
+  if (long.length === 0) return bySchema(armFileSchema, value, [], value);
+  const shortened = (duty as unknown[]).map((segment, i) => {
+    const entry = long.find((one) => one.i === i);
+    return entry ? { ...(segment as object), path: entry.path.slice(0, CHUNK) } : segment;
+  });
+  const issues = bySchema(armFileSchema, { ...(value as object), duty: shortened }, [], value);
+  for (const { i, path } of long) {
+    let found = 0;
+    for (let from = CHUNK; from < path.length && found < ENOUGH; from += CHUNK) {
+      const rows = bySchema(pathRowsSchema, path.slice(from, from + CHUNK), ['duty', i, 'path', from], value);
+      issues.push(...rows);
+      found += rows.length;
+    }
+  }
+  return issues;
 }
 
 /** The value a path leads to; undefined where it leads nowhere. */
@@ -106,7 +136,13 @@ function fixedLength(path: IssuePath): number | null {
 }
 
 function translate(issue: SchemaIssue, root: unknown, prefix: IssuePath): Issue[] {
-  const path = [...prefix, ...issue.path.map((step) => (typeof step === 'symbol' ? String(step) : step))];
+  const own = issue.path.map((step) => (typeof step === 'symbol' ? String(step) : step));
+  // A chunk of a list counts from its own start: the numbers at the joint add.
+  const chunk = prefix.at(-1);
+  const path =
+    typeof chunk === 'number' && typeof own[0] === 'number'
+      ? [...prefix.slice(0, -1), chunk + own[0], ...own.slice(1)]
+      : [...prefix, ...own];
   const value = valueAt(root, path);
   const found = describeValue(value);
   const one = (code: IssueCode, expected: string): Issue[] => [

@@ -354,6 +354,27 @@ describe('texts', () => {
     ]);
   });
 
+  it('with a long path are read to its last row, and each mistake has its own row', () => {
+    const path = Array.from({ length: 5000 }, (_, i) => ({ time_s: i, pose_deg: [0, 0, 0] as unknown[] }));
+    path[1999]!.pose_deg[0] = 'a';
+    path[2000]!.pose_deg[1] = null;
+    path[4321]!.pose_deg = [0, 0];
+    (path[4999] as Record<string, unknown>).pace = 1;
+    const reading = readArmValue({ ...wholeFile(), duty: [{ case: 'carry', share: 1, path }] });
+    expect(reading.ok ? [] : reading.issues.map((issue) => [issue.code, issue.path.slice(2).join('.')])).toEqual([
+      ['wrong-type', 'path.1999.pose_deg.0'],
+      ['wrong-type', 'path.2000.pose_deg.1'],
+      ['unknown-key', 'path.4999.pace'],
+      ['wrong-length', 'path.4321.pose_deg'],
+    ]);
+  });
+
+  it('with a hundred thousand broken rows are refused without harm', () => {
+    const path = Array(100_000).fill({ time_s: 'now', pose_deg: 'there' });
+    const reading = readArmValue({ ...wholeFile(), duty: [{ case: 'carry', share: 1, path }] });
+    expect(reading.ok ? 0 : reading.issues.length).toBe(1001);
+  });
+
   it('with more mistakes than anybody reads are cut short, and say so', () => {
     const path = Array.from({ length: 3000 }, (_, i) => ({ time_s: i, pose_deg: ['x', 'y', 'z'] }));
     const reading = readArmValue({ ...wholeFile(), duty: [{ case: 'carry', share: 1, path }] });
