@@ -87,6 +87,7 @@ export interface PairSupport {
   readonly thrust: 'A' | 'B' | 'both';
   /** How an adjusted angular pair stands; null where the pair is not adjusted. */
   readonly adjusted: 'back-to-back' | 'face-to-face' | null;
+  /** Names in `Arm.bearings`; one that the table lacks makes its checks unassessed. */
   readonly bearingA: string | null;
   readonly bearingB: string | null;
   readonly shaft: Shaft | null;
@@ -145,6 +146,7 @@ export interface Payload {
   readonly mass: number;
   /** In the tip frame, m. */
   readonly centre: Vec3;
+  /** About the centre of mass, axes of the tip frame; null counts as a point mass. */
   readonly inertia: Inertia | null;
 }
 
