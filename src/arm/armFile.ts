@@ -6,9 +6,9 @@ import * as z from 'zod/mini';
 
 export const MAX_TEXT_BYTES = 8 * 1024 * 1024;
 export const MAX_JOINTS = 64;
-export const MAX_CASES = 64;
+const MAX_CASES = 64;
 export const MAX_BEARINGS = 256;
-export const MAX_SECTIONS = 64;
+const MAX_SECTIONS = 64;
 export const MAX_PATH_ROWS = 200_000;
 /** No number of an arm file may be larger, so that products of a few of them stay finite. */
 export const LARGEST = 1e12;
@@ -396,7 +396,6 @@ export const armFileSchema = z.strictObject({
 /** An arm file as it stands: millimetres, degrees, nothing filled in. The page edits this; `armFromFile` makes the SI `Arm`. */
 export type ArmFile = z.infer<typeof armFileSchema>;
 export type JointFile = ArmFile['joints'][number];
-export type RevoluteFile = Extract<JointFile, { kind: 'revolute' }>;
 export type SupportFile = z.infer<typeof supportSchema>;
 export type PairFile = Exclude<SupportFile, { arrangement: 'ring' }>;
 export type ShaftFile = z.infer<typeof shaftSchema>;

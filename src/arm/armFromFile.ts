@@ -88,7 +88,7 @@ function shaft(file: ShaftFile | undefined): Shaft | null {
  * Stations of bearings A and B along the joint axis from the joint origin, mm, as the contract has them: a clevis holds the hub between them, a
  * cantilever has A near the hub and B far from it, both on `side`.
  */
-export function pairStations(file: PairFile): {
+function pairStations(file: PairFile): {
   readonly A: number;
   readonly B: number;
 } {

@@ -8,7 +8,7 @@ const MAX_TEXT = 20_000;
 const MAX_VALUES = 5_000_000;
 
 /** Names that every object has from birth: as a key or a bearing's name they would find what the file never said. */
-export function isBuiltInName(key: string): boolean {
+function isBuiltInName(key: string): boolean {
   return key in Object.prototype;
 }
 
