@@ -106,6 +106,6 @@ export function staticSafety(C0: number, P0: number): number {
 }
 
 /** Usual least static safety for normal, smooth service: 1 for balls, 1.5 for rollers (guide values of ISO 76:2006, from memory). */
-export function usualStaticSafety(bearing: RollingBearing): number {
+export function usualStaticSafety(bearing: Pick<RollingBearing, 'kind'>): number {
   return elementOf(bearing.kind) === 'ball' ? 1 : 1.5;
 }
