@@ -2,14 +2,29 @@
  * The certified worst of many checks in one gravity case: for each an attained value with its pose, and a bound that nothing in the travel
  * exceeds. Rounds of rising refinement touch only checks whose gap is still open, so a first answer is there at once.
  */
+
+import { seededRandom } from '../math/random.ts';
 import type { Chain, ChainCase } from './chain.ts';
 import type { CheckForm, Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { GravityLoad } from './gravityLoad.ts';
 import { COARSE_CELLS, OutwardSets, TOP_LEVEL } from './outwardSets.ts';
 
-/** Local search on the true kernel: improves `pose` [n] in place within the travel and returns the check's value there. */
-export type Climb = (check: CheckForm, pose: Float64Array) => number;
+/** The true kernel, as the search needs it. Poses [n] rad. */
+export interface Climber {
+  value(check: CheckForm, pose: Float64Array): number;
+  /** Value of every entry's check at one pose, by its place in the list. */
+  valuesAt(
+    entries: readonly { readonly check: CheckForm }[],
+    pose: Float64Array,
+    take: (at: number, value: number) => void,
+  ): void;
+  /** Improves `pose` in place within the travel and returns the check's value there. */
+  climb(check: CheckForm, pose: Float64Array): number;
+}
+
+const SAMPLES = 300;
+const SAMPLE_SEED = 20261;
 
 export interface CheckState {
   readonly check: CheckForm;
@@ -30,8 +45,9 @@ const BETTER = 1e-12;
 /** Below this share of its ceiling a check counts as nothing: its gap is closed. */
 export const NOTHING = 1e-9;
 
-/** (bound - found)/bound; 0 where the check is nothing but rounding. */
+/** (bound - found)/bound; 0 where the check is nothing but rounding, 1 where either is not known. */
 export function gapOf(state: { found: number; bound: number; ceiling: number }): number {
+  if (!Number.isFinite(state.bound) || !Number.isFinite(state.found)) return 1;
   if (state.bound - Math.max(state.found, 0) <= NOTHING * state.ceiling) return 0;
   return (state.bound - state.found) / state.bound;
 }
@@ -47,7 +63,7 @@ export class GravitySearch {
   readonly entries: readonly Entry[];
   private readonly chain: Chain;
   private readonly gravity: GravityLoad;
-  private readonly climb: Climb;
+  private readonly climber: Climber;
 
   /** `checks` must satisfy `isHomogeneous`. `previous`: the search of an earlier layout, whose outward sets are used again. */
   constructor(
@@ -55,15 +71,35 @@ export class GravitySearch {
     load: ChainCase,
     gravity: GravityLoad,
     checks: readonly CheckForm[],
-    climb: Climb,
+    climber: Climber,
     previous: GravitySearch | null = null,
   ) {
     this.chain = chain;
     this.gravity = gravity;
-    this.climb = climb;
+    this.climber = climber;
     this.sets = new OutwardSets(chain, gravity, previous?.sets ?? null);
     const kept = new Map<string, GravityCheck>();
     this.entries = checks.map((check) => this.entry(check, kept, load));
+  }
+
+  /** A first look at the kernel: the best of a fixed set of random poses, every third angle at an end of its travel, starts each check. */
+  private sample(): void {
+    const { n, from, to } = this.chain;
+    const random = seededRandom(SAMPLE_SEED);
+    const pose = new Float64Array(n);
+    const best = new Float64Array(this.entries.length).fill(Number.NEGATIVE_INFINITY);
+    for (let k = 0; k < SAMPLES; k++) {
+      for (let i = 0; i < n; i++) {
+        const pick = random.next();
+        pose[i] = pick < 1 / 6 ? from[i]! : pick < 1 / 3 ? to[i]! : random.between(from[i]!, to[i]!);
+      }
+      this.climber.valuesAt(this.entries, pose, (at, value) => {
+        if (!(value > best[at]!)) return;
+        best[at] = value;
+        this.entries[at]!.pose.set(pose);
+      });
+    }
+    for (const entry of this.entries) this.offer(entry, Float64Array.from(entry.pose));
   }
 
   private entry(check: CheckForm, kept: Map<string, GravityCheck>, load: ChainCase): Entry {
@@ -102,8 +138,9 @@ export class GravitySearch {
 
   /** One level more for every check whose gap is open; `due` is asked between checks and ends the round early. */
   round(gap: number, due: () => boolean = () => false): void {
-    const level =
-      Math.min(...this.entries.filter((e) => e.level < TOP_LEVEL && gapOf(e) > gap).map((e) => e.level)) + 1;
+    if (this.entries.every((entry) => entry.found === Number.NEGATIVE_INFINITY)) this.sample();
+    const open = this.entries.filter((entry) => entry.level < TOP_LEVEL && gapOf(entry) > gap);
+    const level = Math.min(...open.map((entry) => entry.level)) + 1;
     for (const entry of this.entries) {
       if (due()) return;
       if (entry.level < level && gapOf(entry) > gap) this.refine(entry, level, gap);
@@ -125,14 +162,7 @@ export class GravitySearch {
       search.follow(pose, Math.min(level, 2), entry.found);
       this.offer(entry, pose);
     }
-    // A neighbour's pose is often better than one's own start (A and B of one pair, the joint beside).
-    if (level <= 1) {
-      for (const other of this.entries) {
-        if (other !== entry && other.level >= 0 && Math.abs(other.check.joint - entry.check.joint) <= 1) {
-          this.offer(entry, Float64Array.from(other.pose));
-        }
-      }
-    }
+    if (level <= 1) this.offerNeighbour(entry);
     entry.level = level;
     if (entry.found > entry.bound) {
       // Only rounding can do this; anything more is a broken proof, which must never pass for a result.
@@ -143,8 +173,23 @@ export class GravitySearch {
     }
   }
 
+  /** A neighbour's pose is often a better start than one's own (A and B of one pair, the joint beside). */
+  private offerNeighbour(entry: Entry): void {
+    let best: Entry | null = null;
+    let most = entry.found;
+    for (const other of this.entries) {
+      if (other === entry || other.level < 0 || Math.abs(other.check.joint - entry.check.joint) > 1) continue;
+      const value = this.climber.value(entry.check, other.pose);
+      if (value > most) {
+        most = value;
+        best = other;
+      }
+    }
+    if (best) this.offer(entry, Float64Array.from(best.pose));
+  }
+
   private offer(entry: Entry, pose: Float64Array): void {
-    const value = this.climb(entry.check, pose);
+    const value = this.climber.climb(entry.check, pose);
     if (value > entry.found + BETTER * Math.abs(entry.found) || entry.found === Number.NEGATIVE_INFINITY) {
       entry.found = value;
       entry.pose.set(pose);

@@ -164,11 +164,13 @@ export class InwardStep implements DirectionFunction {
     this.of(u[0]!, u[1]!, u[2]!, level, enough);
     const { run } = this;
     const angle = this.arc.arg;
-    const part = run.width > 0 ? (angle - run.from) / run.width : 0;
+    // Rounding must not carry a joint past its travel.
+    const part = run.width > 0 ? Math.min(1, Math.max(0, (angle - run.from) / run.width)) : 0;
     run.joints.forEach((j, at) => {
       const low = run.travelFrom[j]!;
       const high = run.travelTo[j]!;
-      pose[j] = run.senses[at]! > 0 ? low + part * (high - low) : high - part * (high - low);
+      const q = run.senses[at]! > 0 ? low + part * (high - low) : high - part * (high - low);
+      pose[j] = Math.min(high, Math.max(low, q));
     });
     turnBack(u, angle);
     intoNext(u, u, run.r, 0);
