@@ -6,7 +6,7 @@
  * turns a canonical housing-frame vector into the frame of the file. The base frame is the file's.
  */
 import type { Arm, Inertia, LoadCase, Placement, Vec3 } from '../arm/arm.ts';
-import { dot3, IDENTITY33, multiply33, multiplyBack33, rotate3, rotateBack3 } from '../math/vector.ts';
+import { cross3, dot3, IDENTITY33, multiply33, multiplyBack33, rotate3 } from '../math/vector.ts';
 
 /** Inertia entries about the link origin, in this order. */
 export const INERTIA = { xx: 0, yy: 1, zz: 2, xy: 3, xz: 4, yz: 5, stride: 6 } as const;
@@ -259,22 +259,21 @@ export function wrenchToFile(chain: Chain, i: number, wrench: Float64Array, at: 
 
 /** What the kernels take for granted; tests call it. Throws on the first assumption that does not hold. */
 export function assertChain(chain: Chain): void {
-  const { n } = chain;
-  const check = new Float64Array(3);
-  const back = new Float64Array(3);
-  for (let i = 0; i < n; i++) {
+  for (let i = 0; i < chain.n; i++) {
     for (const frames of [chain.rotation, chain.housing]) {
-      for (const unit of [
-        [1, 0, 0],
-        [0, 1, 0],
-        [0, 0, 1],
-      ]) {
-        rotate3(check, 0, frames, 9 * i, unit, 0);
-        rotateBack3(back, 0, frames, 9 * i, check, 0);
-        if (back.some((value, k) => !(Math.abs(value - unit[k]!) < 1e-12)))
-          throw new Error(`joint ${i}: not a rotation`);
-      }
+      if (!isRotation(frames, 9 * i)) throw new Error(`joint ${i}: not a rotation`);
     }
     if (!(chain.from[i]! <= chain.to[i]!)) throw new Error(`joint ${i}: travel runs backwards`);
   }
+  if (!isRotation(chain.tipRotation, 0)) throw new Error('tip: not a rotation');
+}
+
+/** Columns of unit length, perpendicular, right-handed. */
+function isRotation(m: Float64Array, at: number): boolean {
+  const square = new Float64Array(9);
+  multiplyBack33(square, 0, m.subarray(at, at + 9), 0, m, at);
+  const rows = [0, 3, 6].map((r) => m.subarray(at + r, at + r + 3));
+  const across = new Float64Array(3);
+  cross3(across, 0, rows[1]!, 0, rows[2]!, 0);
+  return square.every((value, k) => Math.abs(value - IDENTITY33[k]!) < 1e-12) && dot3(rows[0]!, 0, across, 0) > 0;
 }
