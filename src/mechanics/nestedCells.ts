@@ -1,0 +1,161 @@
+/**
+ * Cells of the sphere of gravity directions in one joint's housing frame. For each check a cell is found hopeless or possible when a
+ * direction first falls in it: hopeless where the check, bounded over the whole cell and over all that the outboard tree can make,
+ * stays below its floor (a value that some pose is known to reach). Floors are set once for a job, so a cell says the same whoever
+ * asks first. With a base-fixed force a cell is a pair of cells, one of each direction.
+ *
+ * Cells are squares of a cube around the sphere, projected; the point farthest from a cell's centre is one of its corners.
+ */
+import type { Flat } from '../math/vector.ts';
+import { WRENCH } from './chain.ts';
+import { type NestedBound, pairLoad } from './nestedBound.ts';
+import type { NestedCase } from './nestedCase.ts';
+import type { FormTable } from './nestedForms.ts';
+import type { NestedTree } from './nestedTree.ts';
+
+const UNKNOWN = 0;
+const HOPELESS = 1;
+const POSSIBLE = 2;
+
+/** Levels of the tree that a cell is held against. */
+const MOST_LEVELS = 2;
+
+export class NestedCells {
+  private readonly state: Uint8Array;
+  private readonly edge: number;
+  private readonly load: NestedCase;
+  private readonly bound: NestedBound;
+  private readonly tree: NestedTree;
+  private readonly table: FormTable;
+  private readonly checks: Int32Array;
+  private readonly floor: Float64Array;
+  private readonly centre: Flat;
+  private readonly spread: Flat;
+  private readonly w = new Float64Array(WRENCH);
+
+  /** `edge`: cells along an edge of the cube. `floor` is read by check. */
+  constructor(
+    load: NestedCase,
+    table: FormTable,
+    bound: NestedBound,
+    tree: NestedTree,
+    checks: Int32Array,
+    floor: Float64Array,
+    edge: number,
+  ) {
+    this.load = load;
+    this.table = table;
+    this.bound = bound;
+    this.tree = tree;
+    this.checks = checks;
+    this.floor = floor;
+    this.edge = edge;
+    this.state = new Uint8Array((6 * edge * edge) ** load.pairs * checks.length);
+    this.centre = new Float64Array(3 * load.pairs);
+    this.spread = new Float64Array(load.pairs);
+  }
+
+  /** The cell of u at `at`. */
+  cellOf(u: Flat, at: number): number {
+    const cell = this.squareOf(u[at]!, u[at + 1]!, u[at + 2]!);
+    if (this.load.pairs === 1) return cell;
+    return 6 * this.edge * this.edge * cell + this.squareOf(u[at + 3]!, u[at + 4]!, u[at + 5]!);
+  }
+
+  /** Whether some pose with u in the cell may matter to the check of that number. */
+  possible(cell: number, number: number): boolean {
+    const at = cell * this.checks.length + number;
+    const known = this.state[at]!;
+    if (known !== UNKNOWN) return known === POSSIBLE;
+    const possible = this.examine(cell, this.checks[number]!);
+    this.state[at] = possible ? POSSIBLE : HOPELESS;
+    return possible;
+  }
+
+  private squareOf(x: number, y: number, z: number): number {
+    const ax = Math.abs(x);
+    const ay = Math.abs(y);
+    const az = Math.abs(z);
+    let face = 0;
+    let a = y;
+    let b = z;
+    let most = x;
+    if (ay > ax && ay >= az) {
+      face = 2;
+      a = z;
+      b = x;
+      most = y;
+    } else if (az > ax && az > ay) {
+      face = 4;
+      a = x;
+      b = y;
+      most = z;
+    }
+    if (most === 0) return 0;
+    if (most < 0) {
+      face++;
+      most = -most;
+    }
+    const half = this.edge / 2;
+    // up to the far edge of the last cell
+    const i = Math.min(this.edge - 1, Math.floor((a / most + 1) * half));
+    const j = Math.min(this.edge - 1, Math.floor((b / most + 1) * half));
+    return (face * this.edge + i) * this.edge + j;
+  }
+
+  /** Centre and radius of a cell of direction p, in the size of u_p. */
+  private place(p: number, cell: number): void {
+    const { edge, centre, spread } = this;
+    const size = this.bound.size[p]!;
+    const face = Math.floor(cell / (edge * edge));
+    const i = Math.floor(cell / edge) % edge;
+    const j = cell % edge;
+    const axis = face >> 1;
+    const sign = face & 1 ? -1 : 1;
+    const point = (a: number, b: number): [number, number, number] => {
+      const [u, v] = [(2 * (i + a)) / edge - 1, (2 * (j + b)) / edge - 1];
+      const length = Math.sqrt(1 + u * u + v * v);
+      const out: [number, number, number] = [0, 0, 0];
+      out[axis] = sign / length;
+      out[(axis + 1) % 3] = u / length;
+      out[(axis + 2) % 3] = v / length;
+      return out;
+    };
+    const middle = point(0.5, 0.5);
+    let most = 0;
+    for (let k = 0; k < 4; k++) {
+      const corner = point(k & 1, k >> 1);
+      most = Math.max(most, Math.hypot(corner[0] - middle[0], corner[1] - middle[1], corner[2] - middle[2]));
+    }
+    for (let k = 0; k < 3; k++) centre[3 * p + k] = size * middle[k]!;
+    // a direction on the edge between two cells may be counted to either
+    spread[p] = size * most * (1 + 1e-12);
+  }
+
+  private examine(cell: number, c: number): boolean {
+    const { load, tree } = this;
+    const cells = 6 * this.edge * this.edge;
+    if (load.pairs === 2) this.place(0, Math.floor(cell / cells));
+    this.place(load.pairs - 1, cell % cells);
+    this.bound.direct(c, this.centre, 0);
+    if (this.reaches(c, tree.rootCentre, 0, tree.rootRadius)) return this.below(c, 0, 0);
+    return false;
+  }
+
+  /** Whether some child of a node, as deep as is worth the trouble, reaches the floor. */
+  private below(c: number, level: number, parent: number): boolean {
+    const { tree, load } = this;
+    const turns = tree.turns[level]!;
+    const deeper = level + 1 < Math.min(tree.tabulated, MOST_LEVELS);
+    for (let e = parent * turns; e < (parent + 1) * turns; e++) {
+      if (!this.reaches(c, tree.centre[level]!, load.width * e, tree.radius[level]!)) continue;
+      if (!deeper || this.below(c, level + 1, e)) return true;
+    }
+    return false;
+  }
+
+  private reaches(c: number, Y: Flat, at: number, radius: Flat): boolean {
+    pairLoad(this.load, this.table.joint[c]!, this.centre, 0, Y, at, this.w);
+    return !(this.bound.both(c, this.w, this.centre, this.spread, Y, at, radius) < this.floor[c]!);
+  }
+}

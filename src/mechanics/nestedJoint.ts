@@ -1,0 +1,164 @@
+/**
+ * The checks of one joint in the nested sweep: what the outboard tree can make of them for one inboard choice after another. A node
+ * that cannot matter to a check closes all poses below it for that check; a direction of gravity whose cell of the sphere has been
+ * found hopeless for a check is passed over at once.
+ */
+import type { Flat } from '../math/vector.ts';
+import { WRENCH } from './chain.ts';
+import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
+import { NestedBound, pairLoad, pairValue } from './nestedBound.ts';
+import type { NestedCase } from './nestedCase.ts';
+import { NestedCells } from './nestedCells.ts';
+import { type FormTable, feelsLoad } from './nestedForms.ts';
+import type { NestedTree } from './nestedTree.ts';
+
+export class NestedJoint {
+  readonly joint: number;
+  private readonly table: FormTable;
+  private readonly load: NestedCase;
+  private readonly tree: NestedTree;
+  private readonly cells: NestedCells | null;
+  private readonly bound: NestedBound;
+  /** Checks (slots of the leaders) in two parts: those that the outboard turns leave alone, then those that feel them. */
+  private readonly checks: Int32Array;
+  private readonly alone: number;
+  private readonly active: Int32Array;
+  private readonly frames: Flat;
+  private readonly centres: Flat;
+  private readonly u: Flat;
+  private readonly w = new Float64Array(WRENCH);
+  private uAt = 0;
+
+  /**
+   * `u`: where the inboard vectors will stand; `floor` (by check) and `edge`: for the cells of the sphere, where there are to be any.
+   */
+  constructor(
+    table: FormTable,
+    load: NestedCase,
+    joint: number,
+    tree: NestedTree,
+    u: Flat,
+    floor: Flat | null,
+    edge: number,
+  ) {
+    this.joint = joint;
+    this.table = table;
+    this.load = load;
+    this.tree = tree;
+    this.u = u;
+    this.bound = new NestedBound(table, load);
+    const own: number[] = [];
+    for (let c = 0; c < table.checks; c++) if (table.joint[c] === joint && feelsLoad(table, c)) own.push(c);
+    const feels = (c: number) => load.tool || table.feelsMoment[c] === 1;
+    this.checks = Int32Array.from([...own.filter((c) => !feels(c)), ...own.filter(feels)]);
+    this.alone = own.filter((c) => !feels(c)).length;
+    this.active = new Int32Array((tree.depth + 1) * own.length);
+    this.frames = new Float64Array(tree.frameSize * tree.depth);
+    this.centres = new Float64Array(load.width * tree.depth);
+    // bounds of their own: what a cell asks in between is about another u
+    const bound = new NestedBound(table, load);
+    this.cells = floor && edge > 0 ? new NestedCells(load, table, bound, tree, this.checks, floor, edge) : null;
+  }
+
+  /** Takes every pose of one inboard choice into account: u at `uAt`, the index of its first pose. */
+  at(uAt: number, index: number, leaders: Leaders): void {
+    const { checks, active, alone, cells, tree, load, table, u, w } = this;
+    this.uAt = uAt;
+    const cell = cells ? cells.cellOf(u, uAt) : 0;
+    let open = 0;
+    let loaded = false;
+    for (let k = 0; k < checks.length; k++) {
+      if (cells && !cells.possible(cell, k)) continue;
+      const c = checks[k]!;
+      if (!loaded) pairLoad(load, this.joint, u, uAt, tree.rootCentre, 0, w);
+      loaded = true;
+      if (k < alone) {
+        const value = pairValue(table, c, w);
+        if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, index);
+        continue;
+      }
+      this.bound.direct(c, u, uAt);
+      const bound = this.bound.outward(c, w, u, uAt, tree.rootCentre, 0, tree.rootRadius);
+      if (!beaten(leaders, c, bound, index)) active[open++] = c;
+    }
+    if (open > 0) this.tabulated(0, 0, 0, open, index, leaders);
+  }
+
+  /** Children of node `parent` of a tabulated level; the checks still open start at `from` in `active`. */
+  private tabulated(level: number, parent: number, from: number, count: number, index: number, leaders: Leaders): void {
+    const { tree, load } = this;
+    const turns = tree.turns[level]!;
+    const centre = tree.centre[level]!;
+    const offset = tree.offset[level]!;
+    const end = level === tree.depth - 1;
+    for (let e = parent * turns; e < (parent + 1) * turns; e++) {
+      const at = index + offset[e]!;
+      if (end) {
+        this.offerAll(centre, load.width * e, from, count, at, leaders);
+        continue;
+      }
+      const open = this.stillOpen(level, centre, load.width * e, from, count, at, leaders);
+      if (open === 0) continue;
+      if (level + 1 < tree.tabulated) this.tabulated(level + 1, e, from + count, open, index, leaders);
+      else this.deep(level + 1, tree.frames, tree.frameSize * e, from + count, open, at, leaders);
+    }
+  }
+
+  /** Children of a node in the making, below the tabulated levels. */
+  private deep(
+    level: number,
+    parent: Flat,
+    parentAt: number,
+    from: number,
+    count: number,
+    index: number,
+    leaders: Leaders,
+  ): void {
+    const { tree, load, frames, centres } = this;
+    const end = level === tree.depth - 1;
+    const own = tree.frameSize * level;
+    const at = load.width * level;
+    for (let k = 0; k < tree.turns[level]!; k++) {
+      tree.step(level, k, parent, parentAt, frames, own, centres, at);
+      const here = index + tree.stepOffset(level, k);
+      if (end) {
+        this.offerAll(centres, at, from, count, here, leaders);
+        continue;
+      }
+      const open = this.stillOpen(level, centres, at, from, count, here, leaders);
+      if (open > 0) this.deep(level + 1, frames, own, from + count, open, here, leaders);
+    }
+  }
+
+  private stillOpen(
+    level: number,
+    Y: Flat,
+    at: number,
+    from: number,
+    count: number,
+    index: number,
+    leaders: Leaders,
+  ): number {
+    const { active, tree, w, u, uAt } = this;
+    const radius = tree.radius[level]!;
+    pairLoad(this.load, this.joint, u, uAt, Y, at, w);
+    let open = 0;
+    for (let k = from; k < from + count; k++) {
+      const c = active[k]!;
+      const bound = this.bound.outward(c, w, u, uAt, Y, at, radius);
+      if (bound < leaders.best[c]! - leaders.tie[c]! || beaten(leaders, c, bound, index)) continue;
+      active[from + count + open++] = c;
+    }
+    return open;
+  }
+
+  private offerAll(Y: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
+    const { table, active, w } = this;
+    pairLoad(this.load, this.joint, this.u, this.uAt, Y, at, w);
+    for (let k = from; k < from + count; k++) {
+      const c = active[k]!;
+      const value = pairValue(table, c, w);
+      if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, index);
+    }
+  }
+}
