@@ -75,6 +75,16 @@ export interface CheckRow {
   readonly verdict: Verdict | null;
   readonly reason: string | null;
   readonly source: string | null;
+  /** Place on the part where the value stands, such as `hub`; only where a check looks at several. */
+  readonly where?: string;
+}
+
+/**
+ * Whether a row stands for a check that could not even be computed for want of data: `unassessed`, no value (NaN) and no pose. Its reason
+ * says what to fill in. Any other row whose value is not a number is a failure.
+ */
+export function isMissing(row: CheckRow): boolean {
+  return row.verdict === 'unassessed' && row.pose.length === 0 && Number.isNaN(row.value);
 }
 
 export interface SweepResult {

@@ -10,6 +10,7 @@
 import type { Numbers } from '../../math/vector.ts';
 import { type CheckForm, checkValue, type Form, formHolds, formValue } from '../../mechanics/form.ts';
 import type { Rule } from '../rule.ts';
+import { fewerForms } from './fewerForms.ts';
 
 /** Demand at the joint load w[at..at+5] (canonical housing frame), in the check's unit; NaN where the load is not finite. */
 export type DemandAt = (w: Numbers, at: number) => number;
@@ -51,10 +52,17 @@ export type CheckName = Pick<CapacityCheck, 'check' | 'label' | 'joint' | 'joint
 
 type Rest = Partial<Omit<CapacityCheck, keyof CheckName | 'form'>>;
 
-/** A check with a convex demand. */
+/** A check with a convex demand; `rest.places` goes with the forms given. Forms that never matter are left out. */
 export function formCheck(name: CheckName, forms: readonly Form[], rest: Rest): CapacityCheck {
   const { check, joint, bearing, unit } = name;
-  return { ...blank(name), form: { check, joint, bearing, unit, forms }, ...rest };
+  const { places } = rest;
+  const kept = fewerForms(forms.map((form, k) => ({ form, place: places?.[k] ?? null })));
+  return {
+    ...blank(name),
+    ...rest,
+    form: { check, joint, bearing, unit, forms: kept.map(({ form }) => form) },
+    places: places ? kept.map(({ place }) => place!) : null,
+  };
 }
 
 /** A check whose demand has no convex form. */

@@ -1,5 +1,13 @@
 /** What bearings, shafts and bushings can take: one list of checks. */
-export { type CapacityCheck, capacityForms, type DemandAt, demandAt, placeAt } from './check.ts';
+export {
+  type CapacityCheck,
+  type CheckName,
+  capacityForms,
+  type DemandAt,
+  demandAt,
+  missingCheck,
+  placeAt,
+} from './check.ts';
 export { type DynamicLoad, dynamicLoad } from './dynamicLoad.ts';
 export { type BearingSide, isRingParts, jointParts, type PairParts, type RingParts } from './jointParts.ts';
 export { capacityChecks, jointCapacity } from './list.ts';
