@@ -7,8 +7,9 @@
  * with z stations along the axis from the joint origin; a radial force d at station s adds (zB-s)/(zB-zA) d to A, the rest to B.
  */
 import type { Drive, PairSupport } from '../arm/arm.ts';
+import type { Numbers } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
-import { type CheckForm, type Form, form } from './form.ts';
+import { type CheckForm, type Form, form, formHolds } from './form.ts';
 
 /** Radial force of a drive as a function of the torque w[5]: (k · torque + c) in x and y, valid from `from` to `to` N·m. */
 export interface DriveBranch {
@@ -25,7 +26,8 @@ const ALWAYS: readonly DriveBranch[] = [
 /**
  * Force of the drive ON the shaft. The mesh or belt holds the joint load's torque T about the axis. Gear: tangential T/radius
  * against T, separating |T|/radius·tan(pressure angle) away from the mesh (involute spur gear, no friction). Belt: the pull of
- * both strands, the larger of the pretension and tensionRatio·|T|/radius, along `pull`.
+ * both strands, the larger of the pretension and tensionRatio·|T|/radius, along `pull`. The pretension is a setting of the
+ * joint, not a load of the case: the case's factor multiplies T and leaves it as it is.
  */
 export function driveBranches(drive: Drive | null): readonly DriveBranch[] {
   if (!drive) return ALWAYS;
@@ -146,14 +148,13 @@ export function pairChecks(joint: number, pair: PairGeometry, thrust: PairSuppor
 export function ringChecks(joint: number, station: number, drive: Drive | null): readonly CheckForm[] {
   const branches = driveBranches(drive);
   const lever = drive ? drive.station - station : 0;
-  const unit = drive ? 1 : 0;
   const radial = branches.map((b) =>
     form({
       P: [
-        [1, 0, 0, 0, 0, unit * b.k[0]],
-        [0, 1, 0, 0, 0, unit * b.k[1]],
+        [1, 0, 0, 0, 0, b.k[0]],
+        [0, 1, 0, 0, 0, b.k[1]],
       ],
-      c: [unit * b.c[0], unit * b.c[1]],
+      c: b.c,
       torque: [b.from, b.to],
     }),
   );
@@ -187,9 +188,9 @@ export function axialLoads(thrust: PairSupport['thrust'], fz: number): readonly 
 }
 
 /** Radial load vector of a form (its P w + c) at the wrench w[at..], for forms of two rows. */
-export function radialVector(forms: readonly Form[], w: ArrayLike<number>, at: number): readonly [number, number] {
+export function radialVector(forms: readonly Form[], w: Numbers, at: number): readonly [number, number] {
   for (const f of forms) {
-    if (!(w[at + 5]! >= f.torqueFrom && w[at + 5]! <= f.torqueTo)) continue;
+    if (!formHolds(f, w, at)) continue;
     let x = f.c[0]!;
     let y = f.c[1]!;
     for (let k = 0; k < WRENCH; k++) {

@@ -29,11 +29,21 @@ export interface Node {
   readonly [key: string]: unknown;
 }
 
-/** Calls `visit` with every node of a file; syntax errors throw. */
+const parsed = new Map<string, unknown>();
+
+/** Syntax tree of a file, parsed once; syntax errors throw. */
+function treeOf(path: string): unknown {
+  if (!parsed.has(path)) {
+    const { program, errors } = parseSync(path, readFileSync(path, 'utf8'));
+    if (errors.length > 0) throw new Error(`${path}: ${errors[0]!.message}`);
+    parsed.set(path, program);
+  }
+  return parsed.get(path);
+}
+
+/** Calls `visit` with every node of a file. */
 export function walk(path: string, visit: (node: Node) => void): void {
-  const { program, errors } = parseSync(path, readFileSync(path, 'utf8'));
-  if (errors.length > 0) throw new Error(`${path}: ${errors[0]!.message}`);
-  const stack: unknown[] = [program];
+  const stack: unknown[] = [treeOf(path)];
   while (stack.length > 0) {
     const node = stack.pop();
     if (Array.isArray(node)) {
