@@ -39,7 +39,7 @@ export interface CheckState {
 }
 
 /** Rounding of a dozen steps on values of the ceiling's size, with room to spare: what a bound is raised by. */
-const ROUNDING = 1e-12;
+export const ROUNDING = 1e-12;
 /** A better pose must be better by this share; else the one met first stays. Ties are thus broken by the order of the search. */
 const BETTER = 1e-12;
 /** Below this share of its ceiling a check counts as nothing: its gap is closed. */
@@ -50,6 +50,15 @@ export function gapOf(state: { found: number; bound: number; ceiling: number }):
   if (!Number.isFinite(state.bound) || !Number.isFinite(state.found)) return 1;
   if (state.bound - Math.max(state.found, 0) <= NOTHING * state.ceiling) return 0;
   return (state.bound - state.found) / state.bound;
+}
+
+/** A value attained above its bound raises the bound, where rounding did it; anything more is a broken proof, which must never pass. */
+export function raiseByRounding(state: CheckState): void {
+  if (!(state.found > state.bound)) return;
+  if (state.found - state.bound > NOTHING * state.ceiling) {
+    throw new Error(`bound below an attained value: ${state.check.check} of joint ${state.check.joint + 1}`);
+  }
+  state.bound = state.found;
 }
 
 interface Entry extends CheckState {
@@ -164,13 +173,7 @@ export class GravitySearch {
     }
     if (level <= 1) this.offerNeighbour(entry);
     entry.level = level;
-    if (entry.found > entry.bound) {
-      // Only rounding can do this; anything more is a broken proof, which must never pass for a result.
-      if (entry.found - entry.bound > NOTHING * entry.ceiling) {
-        throw new Error(`bound below an attained value: ${entry.check.check} of joint ${entry.check.joint + 1}`);
-      }
-      entry.bound = entry.found;
-    }
+    raiseByRounding(entry);
   }
 
   /** A neighbour's pose is often a better start than one's own (A and B of one pair, the joint beside). */

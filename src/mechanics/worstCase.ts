@@ -1,0 +1,176 @@
+/**
+ * The certified worst of many checks in one load case, whatever the load: spheres where it is a weight, spheres then branch and bound
+ * where a tip force points anywhere, branch and bound for all else. Anytime: `step` does a slice of work, `rows` tells where things stand.
+ */
+import { BranchBound } from './branchBound.ts';
+import { InboardDirections } from './branchBoundInboard.ts';
+import { type Chain, type ChainCase, WRENCH } from './chain.ts';
+import type { CheckForm } from './form.ts';
+import { FreeForceSearch, tipMass } from './freeForceSearch.ts';
+import type { FreePart } from './freeLoads.ts';
+import { GravityClimb } from './gravityClimb.ts';
+import { gravityLoad } from './gravityLoad.ts';
+import { type CheckState, GravitySearch, gapOf, isHomogeneous, raiseByRounding } from './gravitySearch.ts';
+import { OutwardSets } from './outwardSets.ts';
+import { Polish } from './polish.ts';
+
+export interface WorstRow {
+  readonly check: CheckForm;
+  readonly found: number;
+  readonly pose: Float64Array;
+  readonly free: FreePart | null;
+  /** Joint load at `pose`, canonical housing frame. [6] */
+  readonly wrench: Float64Array;
+  readonly bound: number;
+  readonly gap: number;
+}
+
+/** Boxes that branch and bound looks at in one slice. */
+const SLICE = 400;
+
+/** What is under way for one check. */
+interface Task {
+  readonly state: CheckState;
+  readonly spheres: FreeForceSearch | null;
+  branch: BranchBound | null;
+  /** Branch and bound can do no more. */
+  spent: boolean;
+}
+
+export class WorstCase {
+  private readonly chain: Chain;
+  private readonly load: ChainCase;
+  private readonly gravity: GravitySearch | null;
+  private readonly tasks: readonly Task[];
+  private readonly states: readonly CheckState[];
+  private readonly inboard = new Map<number, InboardDirections>();
+  private turn = 0;
+
+  /** `previous`: the search of an earlier layout of the same arm; its outward sets serve again where nothing outboard changed. */
+  constructor(chain: Chain, load: ChainCase, checks: readonly CheckForm[], previous: WorstCase | null = null) {
+    this.chain = chain;
+    this.load = load;
+    const weight = gravityLoad(chain, load);
+    const onSphere = weight ? checks.filter(isHomogeneous) : [];
+    this.gravity = weight
+      ? new GravitySearch(chain, load, weight, onSphere, new GravityClimb(chain, load), previous?.gravity ?? null)
+      : null;
+    const entries = new Map(onSphere.map((check, k) => [check, this.gravity!.entries[k]!]));
+    const sets = !weight && load.force === 'any' && load.speed === null ? freeSets(chain, load) : null;
+    this.states = checks.map((check) => entries.get(check) ?? blank(chain, check));
+    this.tasks = this.states.map((state) => ({
+      state,
+      spheres: sets && isHomogeneous(state.check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
+      branch: null,
+      spent: false,
+    }));
+  }
+
+  /** Whether more work can bring a check to the gap. */
+  open(gap: number): boolean {
+    return this.gravity?.open(gap) || this.tasks.some((task) => !task.spent && gapOf(task.state) > gap);
+  }
+
+  /** A slice of work: one round on the spheres, or one go at the next open check. `due` ends a round early. */
+  step(gap: number, due: () => boolean = () => false): void {
+    if (this.gravity?.open(gap)) {
+      this.gravity.round(gap, due);
+      return;
+    }
+    for (let k = 0; k < this.tasks.length; k++) {
+      const task = this.tasks[this.turn % this.tasks.length]!;
+      this.turn++;
+      if (task.spent || gapOf(task.state) <= gap) continue;
+      this.advance(task, gap);
+      return;
+    }
+  }
+
+  rows(): readonly WorstRow[] {
+    return this.tasks.map((task) => this.row(task));
+  }
+
+  private advance(task: Task, gap: number): void {
+    const { state } = task;
+    if (!task.branch) {
+      task.branch = new BranchBound(this.chain, this.load, state.check, {
+        gap,
+        seeds: this.seeds(state),
+        inboard: this.directions(state.check.joint),
+      });
+      state.ceiling = Math.max(state.ceiling, task.branch.ceiling);
+      this.take(task);
+      if (gapOf(state) <= gap) return;
+      while (task.spheres?.open(gap)) task.spheres.round();
+      return;
+    }
+    task.branch.step(SLICE);
+    this.take(task);
+  }
+
+  private take(task: Task): void {
+    const { branch, state } = task;
+    if (branch!.found > state.found || state.found === Number.NEGATIVE_INFINITY) {
+      state.found = branch!.found;
+      state.pose.set(branch!.pose);
+    }
+    state.bound = Math.min(state.bound, branch!.bound);
+    task.spent = branch!.done;
+  }
+
+  /** Poses to climb from: what is known of this check and of the checks beside it. */
+  private seeds(state: CheckState): readonly Float64Array[] {
+    const near = this.states.filter(
+      (other) => Math.abs(other.check.joint - state.check.joint) <= 1 && Number.isFinite(other.found),
+    );
+    return near.slice(0, 4).map((other) => other.pose);
+  }
+
+  private directions(joint: number): InboardDirections {
+    const known = this.inboard.get(joint) ?? new InboardDirections(this.chain, joint);
+    this.inboard.set(joint, known);
+    return known;
+  }
+
+  private row(task: Task): WorstRow {
+    const { state, branch } = task;
+    if (branch && branch.found === state.found) {
+      const { free, wrench } = branch.state();
+      return { ...result(state), free, wrench };
+    }
+    const at = new Polish(this.chain, this.load, state.check);
+    const pose = Float64Array.from(state.pose);
+    const value = at.climb(pose);
+    if (value >= state.found) {
+      state.found = value;
+      state.pose.set(pose);
+    }
+    raiseByRounding(state);
+    return { ...result(state), free: null, wrench: Float64Array.from(at.worst.wrench.subarray(0, WRENCH)) };
+  }
+}
+
+function result(state: CheckState) {
+  return {
+    check: state.check,
+    found: state.found,
+    pose: Float64Array.from(state.pose),
+    bound: state.bound,
+    gap: gapOf(state),
+  };
+}
+
+function blank(chain: Chain, check: CheckForm): CheckState {
+  return {
+    check,
+    found: Number.NEGATIVE_INFINITY,
+    pose: new Float64Array(chain.n),
+    bound: Number.POSITIVE_INFINITY,
+    ceiling: 0,
+    level: 0,
+  };
+}
+
+function freeSets(chain: Chain, load: ChainCase): { weights: OutwardSets; tip: OutwardSets } {
+  return { weights: new OutwardSets(chain, load), tip: new OutwardSets(chain, tipMass(chain, load)) };
+}
