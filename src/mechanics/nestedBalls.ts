@@ -82,6 +82,8 @@ function inward(chain: Chain, load: NestedCase, stages: readonly Stage[], balls:
       const outboard = 9 * (stage.joint + 1);
       if (stage.last && stage.joint < chain.n - 1) rotateBack3(here, 3 * p, chain.rotation, outboard, here, 3 * p);
     }
+    // in motion a turn counts even where gravity does not feel it, but for the first joint's, which turns the whole arm about gravity
+    if (load.motion && stage.joint > 0) moves = true;
     inTurns[s] = moves ? stage.cos.length : 1;
   });
   inCentre.set(here, 3 * pairs * stages.length);
@@ -116,7 +118,8 @@ function outward(chain: Chain, load: NestedCase, stages: readonly Stage[], balls
       outRadius[r + blocks - 1]! += Math.hypot(px, py, pz) * outRadius[r + blocks - 2]!;
     }
   }
-  let moves = false;
+  // in motion inertias turn as well
+  let moves = load.motion !== null;
   for (let b = 0; b < blocks; b++) if (turn(stage, 1, outCentre, at + 3 * b, outRadius, r + b)) moves = true;
   outTurns[s] = moves ? stage.cos.length : 1;
 }

@@ -6,6 +6,7 @@
 import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
 import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
+import type { PoseValue } from './gridSweepPose.ts';
 import { NestedBound, pairLoad, pairValue } from './nestedBound.ts';
 import type { NestedCase } from './nestedCase.ts';
 import { NestedCells } from './nestedCells.ts';
@@ -19,6 +20,8 @@ export class NestedJoint {
   private readonly tree: NestedTree;
   private readonly cells: NestedCells | null;
   private readonly bound: NestedBound;
+  private readonly exact: PoseValue | null;
+  private readonly none: Flat;
   /** Checks (slots of the leaders) in two parts: those that the outboard turns leave alone, then those that feel them. */
   private readonly checks: Int32Array;
   private readonly alone: number;
@@ -30,7 +33,8 @@ export class NestedJoint {
   private uAt = 0;
 
   /**
-   * `u`: where the inboard vectors will stand; `floor` (by check) and `edge`: for the cells of the sphere, where there are to be any.
+   * `u`: where the inboard vectors will stand; `exact`: values at a pose, where the case leaves something free; `floor` (by check) and
+   * `edge`: for the cells of the sphere, where there are to be any.
    */
   constructor(
     table: FormTable,
@@ -38,6 +42,7 @@ export class NestedJoint {
     joint: number,
     tree: NestedTree,
     u: Flat,
+    exact: PoseValue | null,
     floor: Flat | null,
     edge: number,
   ) {
@@ -46,10 +51,12 @@ export class NestedJoint {
     this.load = load;
     this.tree = tree;
     this.u = u;
+    this.exact = exact;
+    this.none = new Float64Array(load.blocks);
     this.bound = new NestedBound(table, load);
     const own: number[] = [];
     for (let c = 0; c < table.checks; c++) if (table.joint[c] === joint && feelsLoad(table, c)) own.push(c);
-    const feels = (c: number) => load.tool || table.feelsMoment[c] === 1;
+    const feels = (c: number) => load.tool || load.motion !== null || table.feelsMoment[c] === 1;
     this.checks = Int32Array.from([...own.filter((c) => !feels(c)), ...own.filter(feels)]);
     this.alone = own.filter((c) => !feels(c)).length;
     this.active = new Int32Array((tree.depth + 1) * own.length);
@@ -62,7 +69,7 @@ export class NestedJoint {
 
   /** Takes every pose of one inboard choice into account: u at `uAt`, the index of its first pose. */
   at(uAt: number, index: number, leaders: Leaders): void {
-    const { checks, active, alone, cells, tree, load, table, u, w } = this;
+    const { checks, active, alone, cells, tree, load, u, w } = this;
     this.uAt = uAt;
     const cell = cells ? cells.cellOf(u, uAt) : 0;
     let open = 0;
@@ -73,8 +80,7 @@ export class NestedJoint {
       if (!loaded) pairLoad(load, this.joint, u, uAt, tree.rootCentre, 0, w);
       loaded = true;
       if (k < alone) {
-        const value = pairValue(table, c, w);
-        if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, index);
+        this.take(c, uAt, tree.rootCentre, 0, index, leaders);
         continue;
       }
       this.bound.direct(c, u, uAt);
@@ -153,12 +159,20 @@ export class NestedJoint {
   }
 
   private offerAll(Y: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
-    const { table, active, w } = this;
-    pairLoad(this.load, this.joint, this.u, this.uAt, Y, at, w);
-    for (let k = from; k < from + count; k++) {
-      const c = active[k]!;
-      const value = pairValue(table, c, w);
-      if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, index);
-    }
+    pairLoad(this.load, this.joint, this.u, this.uAt, Y, at, this.w);
+    for (let k = from; k < from + count; k++) this.take(this.active[k]!, this.uAt, Y, at, index, leaders);
+  }
+
+  /** Offers check c at the pose of u and Y, whose joint load is in `w`. */
+  private take(c: number, uAt: number, Y: Flat, at: number, index: number, leaders: Leaders): void {
+    const { exact, w } = this;
+    const floor = leaders.best[c]! - leaders.tie[c]!;
+    let value: number;
+    if (exact) {
+      if (beaten(leaders, c, this.bound.outward(c, w, this.u, uAt, Y, at, this.none), index)) return;
+      exact.set(index);
+      value = exact.value(c, floor);
+    } else value = pairValue(this.table, c, w);
+    if (!(value < floor)) offer(leaders, c, value, index);
   }
 }

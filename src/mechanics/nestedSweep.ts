@@ -1,5 +1,5 @@
 /**
- * The worst pose of every check over a box of the grid, for a case with nothing free: the same answer as looking at each pose.
+ * The worst pose of every check over a box of the grid: the same answer as looking at each pose.
  *
  * Gravity in a joint's housing frame depends on the joints inboard alone, the first moment outboard on the joint itself and those
  * outboard of it: the load of joint i is a function of a pair (u, Y) and the grid is every u with every Y. So u is carried from the
@@ -9,8 +9,10 @@
 import { rotateBack3 } from '../math/vector.ts';
 import { type Chain, type ChainCase, WRENCH } from './chain.ts';
 import type { CheckForm } from './form.ts';
+import { hasFree } from './freeLoads.ts';
 import type { Grid } from './gridSweepGrid.ts';
 import { type Leaders, offer } from './gridSweepLeaders.ts';
+import { PoseValue } from './gridSweepPose.ts';
 import { type NestedBalls, nestedBalls } from './nestedBalls.ts';
 import { pairValue } from './nestedBound.ts';
 import { type NestedCase, nestedCase } from './nestedCase.ts';
@@ -29,6 +31,7 @@ export class NestedSweep {
   private readonly load: NestedCase;
   private readonly table: FormTable;
   private readonly floor: Float64Array | null;
+  private readonly exact: PoseValue | null;
   private stages: readonly Stage[] = [];
   private inTurns: Int32Array = new Int32Array(0);
   private u = new Float64Array(0);
@@ -50,6 +53,7 @@ export class NestedSweep {
     this.load = nestedCase(chain, load);
     this.table = formTable(checks);
     this.floor = floor;
+    this.exact = hasFree(load) ? new PoseValue(chain, load, checks, grid) : null;
   }
 
   /** Takes the poses of a box (first and last sample of each joint) into account. Slots of `leaders` are the checks. */
@@ -87,7 +91,7 @@ export class NestedSweep {
     const tree = new NestedTree(chain, load, stages, balls, s);
     const served = (directions / DIRECTIONS_A_CELL) ** (1 / load.pairs);
     const edge = Math.min(MOST_EDGE[load.pairs]!, Math.floor(Math.sqrt(served / 6)));
-    return new NestedJoint(table, load, i, tree, this.u, this.floor, edge);
+    return new NestedJoint(table, load, i, tree, this.u, this.exact, this.floor, edge);
   }
 
   /** u before stage s stands at 3 pairs s; makes its turns, one after another, and goes outward. */
