@@ -237,13 +237,9 @@ function forwardRates(chain: Chain, rates: Rates, scratch: PoseScratch): void {
       tmp[7] = accel[prev + 1]! + bz * px - bx * pz + oz * cx - ox * cz;
       tmp[8] = accel[prev + 2]! + bx * py - by * px + ox * cy - oy * cx;
     }
-    for (const [offset, target] of [
-      [0, omega],
-      [3, alpha],
-      [6, accel],
-    ] as const) {
-      rotateBack3(target, at, chain.rotation, 9 * i, tmp, offset);
-    }
+    rotateBack3(omega, at, chain.rotation, 9 * i, tmp, 0);
+    rotateBack3(alpha, at, chain.rotation, 9 * i, tmp, 3);
+    rotateBack3(accel, at, chain.rotation, 9 * i, tmp, 6);
     const rate = rates.speed[i]!;
     // ω × z q̇ in the housing frame, before q̇ is added to ω
     alpha[at]! += omega[at + 1]! * rate;
@@ -252,13 +248,17 @@ function forwardRates(chain: Chain, rates: Rates, scratch: PoseScratch): void {
     omega[at + 2]! += rate;
     const c = cos[i]!;
     const s = sin[i]!;
-    for (const v of [omega, alpha, accel]) {
-      const x = v[at]!;
-      const y = v[at + 1]!;
-      v[at] = c * x + s * y;
-      v[at + 1] = c * y - s * x;
-    }
+    turnBackZ(omega, at, c, s);
+    turnBackZ(alpha, at, c, s);
+    turnBackZ(accel, at, c, s);
   }
+}
+
+function turnBackZ(v: Flat, at: number, c: number, s: number): void {
+  const x = v[at]!;
+  const y = v[at + 1]!;
+  v[at] = c * x + s * y;
+  v[at + 1] = c * y - s * x;
 }
 
 /** Position of the tip origin from each joint origin, canonical housing frame, m. `out` [3n]. */
