@@ -9,23 +9,19 @@ export interface UnitFunction {
   unit(e0: number, e1: number, e2: number, level: number): number;
 }
 
-/** Halvings of an octant's edge at level 0 of a three-component search. */
-const TRIANGLE_DEPTH = 4;
-
 export class UnitMax {
   /** Of the last call: the e of the best value met. [3] */
   readonly e = new Float64Array(3);
   private readonly rows: number;
   private readonly arc = new ArcMax(0, 2 * Math.PI);
+  private readonly meridian: Meridian | null;
   private f: UnitFunction | null = null;
-  private best = 0;
-  private met = 0;
-  private level = 0;
-  private enough = 0;
   private kappa = 0;
+  private sag = 0;
 
   constructor(rows: number) {
     this.rows = rows;
+    this.meridian = rows === 3 ? new Meridian() : null;
   }
 
   /** `sag` ≥ |G| of any unit e; bounds below `enough` are not refined. */
@@ -39,66 +35,56 @@ export class UnitMax {
       return Math.max(plus, minus);
     }
     this.f = f;
-    if (this.rows === 2) {
-      const bound = this.arc.run(this, level, kappa, sag, enough);
-      this.e[0] = Math.cos(this.arc.arg);
-      this.e[1] = Math.sin(this.arc.arg);
-      return bound;
-    }
-    this.level = level;
     this.kappa = kappa;
-    this.enough = enough;
-    this.best = Number.NEGATIVE_INFINITY;
-    this.met = Number.NEGATIVE_INFINITY;
-    for (let octant = 0; octant < 8; octant++) {
-      const a = octant & 1 ? -1 : 1;
-      const b = octant & 2 ? -1 : 1;
-      const c = octant & 4 ? -1 : 1;
-      this.triangle([a, 0, 0], [0, b, 0], [0, 0, c], level + TRIANGLE_DEPTH);
+    this.sag = sag;
+    const bound = this.arc.run(this, level, kappa, sag, enough);
+    const t = this.arc.arg;
+    if (this.meridian) {
+      this.at(t, level);
+      this.meridian.write(this.e);
+    } else {
+      this.e[0] = Math.cos(t);
+      this.e[1] = Math.sin(t);
     }
-    return this.best;
+    return bound;
   }
 
+  /**
+   * Two rows: G on the circle. Three: the most of G on the half circle from pole to pole through (cos t, sin t, 0). Between two such
+   * half circles δ apart, e = a e1 + b e2 with e1, e2 in the half discs of the two and a, b as in arcBound, and a convex function's
+   * most on a half disc is on its half circle: so the same bound holds.
+   */
   at(t: number, level: number): number {
-    return this.f!.unit(Math.cos(t), Math.sin(t), 0, level);
-  }
-
-  /** Unit corners; inside, e = Σ a_k e_k with a_k ≥ 0 and 1 ≤ Σ a_k ≤ 1/(distance of the corners' plane). */
-  private triangle(p: number[], q: number[], r: number[], depth: number): void {
-    let most = Number.NEGATIVE_INFINITY;
-    for (const corner of [p, q, r]) {
-      const value = this.f!.unit(corner[0]!, corner[1]!, corner[2]!, this.level);
-      if (value > this.met) {
-        this.met = value;
-        this.e.set(corner);
-      }
-      if (!(value <= most)) most = value;
-    }
-    const nx = (q[1]! - p[1]!) * (r[2]! - p[2]!) - (q[2]! - p[2]!) * (r[1]! - p[1]!);
-    const ny = (q[2]! - p[2]!) * (r[0]! - p[0]!) - (q[0]! - p[0]!) * (r[2]! - p[2]!);
-    const nz = (q[0]! - p[0]!) * (r[1]! - p[1]!) - (q[1]! - p[1]!) * (r[0]! - p[0]!);
-    const far = Math.hypot(nx, ny, nz) / Math.abs(nx * p[0]! + ny * p[1]! + nz * p[2]!);
-    const top = most + this.kappa;
-    const bound = top > 0 ? far * top - this.kappa : most;
-    if (bound <= this.best) return;
-    if (depth === 0 || bound <= this.enough) {
-      this.best = bound;
-      return;
-    }
-    const pq = middle(p, q);
-    const qr = middle(q, r);
-    const rp = middle(r, p);
-    this.triangle(pq, qr, rp, depth - 1);
-    this.triangle(p, pq, rp, depth - 1);
-    this.triangle(q, qr, pq, depth - 1);
-    this.triangle(r, rp, qr, depth - 1);
+    const x = Math.cos(t);
+    const y = Math.sin(t);
+    if (this.meridian === null) return this.f!.unit(x, y, 0, level);
+    return this.meridian.run(this.f!, x, y, level, this.kappa, this.sag);
   }
 }
 
-function middle(a: number[], b: number[]): number[] {
-  const x = a[0]! + b[0]!;
-  const y = a[1]! + b[1]!;
-  const z = a[2]! + b[2]!;
-  const length = Math.hypot(x, y, z);
-  return [x / length, y / length, z / length];
+/** A half circle of unit vectors from pole to pole. */
+class Meridian {
+  private readonly arc = new ArcMax(-Math.PI / 2, Math.PI / 2);
+  private f: UnitFunction | null = null;
+  private x = 0;
+  private y = 0;
+
+  run(f: UnitFunction, x: number, y: number, level: number, kappa: number, sag: number): number {
+    this.f = f;
+    this.x = x;
+    this.y = y;
+    return this.arc.run(this, level, kappa, sag, Number.NEGATIVE_INFINITY);
+  }
+
+  at(t: number, level: number): number {
+    const c = Math.cos(t);
+    return this.f!.unit(c * this.x, c * this.y, Math.sin(t), level);
+  }
+
+  write(e: Float64Array): void {
+    const c = Math.cos(this.arc.arg);
+    e[0] = c * this.x;
+    e[1] = c * this.y;
+    e[2] = Math.sin(this.arc.arg);
+  }
 }

@@ -128,18 +128,22 @@ class FreeDirection {
 
   most(e0: number, e1: number, e2: number, el: number, level: number): number {
     const { ab, mg, t1, t2 } = this;
-    const part = (k: number) => e0 * ab[k]! + e1 * ab[6 + k]! + e2 * ab[12 + k]! + el * ab[18 + k]!;
-    const ax = mg * part(0);
-    const ay = mg * part(1);
-    const az = mg * part(2);
-    const bx = part(3);
-    const by = part(4);
-    const bz = part(5);
+    const ax = mg * (e0 * ab[0]! + e1 * ab[6]! + e2 * ab[12]! + el * ab[18]!);
+    const ay = mg * (e0 * ab[1]! + e1 * ab[7]! + e2 * ab[13]! + el * ab[19]!);
+    const az = mg * (e0 * ab[2]! + e1 * ab[8]! + e2 * ab[14]! + el * ab[20]!);
+    const bx = e0 * ab[3]! + e1 * ab[9]! + e2 * ab[15]! + el * ab[21]!;
+    const by = e0 * ab[4]! + e1 * ab[10]! + e2 * ab[16]! + el * ab[22]!;
+    const bz = e0 * ab[5]! + e1 * ab[11]! + e2 * ab[17]! + el * ab[23]!;
     const size = Math.sqrt(bx * bx + by * by + bz * bz);
     if (!(size > 0)) return Math.sqrt(ax * ax + ay * ay + az * az);
-    const [nx, ny, nz] = [bx / size, by / size, bz / size];
+    const nx = bx / size;
+    const ny = by / size;
+    const nz = bz / size;
     // Any direction well away from β̂ starts the pair
-    const [hx, hy, hz] = Math.abs(nz) < 0.8 ? [ny, -nx, 0] : [0, nz, -ny];
+    const flat = Math.abs(nz) < 0.8;
+    const hx = flat ? ny : 0;
+    const hy = flat ? -nx : nz;
+    const hz = flat ? 0 : -ny;
     const h = Math.sqrt(hx * hx + hy * hy + hz * hz);
     t1[0] = hx / h;
     t1[1] = hy / h;

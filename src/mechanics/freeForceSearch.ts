@@ -46,8 +46,7 @@ export class FreeForceSearch {
     for (const [gravity, force] of this.pairs) {
       const push = force.cap(this.level, Number.NEGATIVE_INFINITY);
       const enough = this.state.found - push;
-      let weight = gravity.cap(this.level, enough);
-      if (weight > enough) weight = Math.min(weight, gravity.bound(this.level, enough));
+      const weight = gravity.best(this.level, enough, enough);
       if (!(weight + push <= most)) most = weight + push;
     }
     const bound = most + ROUNDING * this.state.ceiling;

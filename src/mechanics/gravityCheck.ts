@@ -24,6 +24,8 @@ import type { OutwardSets } from './outwardSets.ts';
 
 /** Inboard steps that are taken on exact arcs rather than from tables. */
 const EXACT = 2;
+/** A cap this much above the bound of its level will not become the better one. */
+const CAP_WORTH = 1.01;
 
 export class GravityCheck {
   readonly joint: number;
@@ -31,6 +33,7 @@ export class GravityCheck {
   private readonly steps: InwardStep[] = [];
   private readonly value: DirectionValue;
   private readonly u0: Float64Array;
+  private capHelps: boolean;
 
   /** `g` m/s² ≥ 0; `down` its unit direction in the base frame; `form` with c = 0 and o = 0. */
   constructor(sets: OutwardSets, joint: number, form: Form, g: number, down: ArrayLike<number>) {
@@ -40,6 +43,8 @@ export class GravityCheck {
     this.u0 = new Float64Array(3);
     intoNext(this.u0, down, sets.chain.rotation, 0);
     const runs = parallelRuns(sets, joint);
+    // One step inboard reaches an arc of directions at most, and is cheap to follow exactly.
+    this.capHelps = runs.length > 1;
     let next: DirectionFunction = this.value;
     for (let s = runs.length - 1; s >= 0; s--) {
       if (s + 1 >= EXACT) {
@@ -74,6 +79,18 @@ export class GravityCheck {
    */
   cap(level: number, enough: number): number {
     return this.value.cap(level, enough);
+  }
+
+  /**
+   * The better of `cap` and `bound` at little cost: the cap first, the bound only where the cap exceeds `wanted`, and no caps any more once one
+   * came out far above the bound of its level.
+   */
+  best(level: number, wanted: number, enough: number): number {
+    const cap = this.capHelps ? this.cap(level, enough) : Number.POSITIVE_INFINITY;
+    if (cap <= wanted) return cap;
+    const bound = this.bound(level, enough);
+    if (level > 0 && cap > bound * CAP_WORTH) this.capHelps = false;
+    return Math.min(cap, bound);
   }
 
   /** Pose at which the tables of this level see their maximum; `pose` [n] is filled. */

@@ -5,6 +5,7 @@
 
 import { seededRandom } from '../math/random.ts';
 import type { Chain, ChainCase } from './chain.ts';
+import { FanCheck, type SphereCheck } from './fanCheck.ts';
 import type { CheckForm, Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { GravityLoad } from './gravityLoad.ts';
@@ -62,7 +63,8 @@ export function raiseByRounding(state: CheckState): void {
 }
 
 interface Entry extends CheckState {
-  readonly searches: readonly GravityCheck[];
+  /** One for each form that differs, with the best bound so far. */
+  readonly searches: readonly { readonly search: SphereCheck; bound: number }[];
   /** Value of forms that are constant. */
   readonly floor: number;
 }
@@ -87,7 +89,7 @@ export class GravitySearch {
     this.gravity = gravity;
     this.climber = climber;
     this.sets = new OutwardSets(chain, gravity, previous?.sets ?? null);
-    const kept = new Map<string, GravityCheck>();
+    const kept = new Map<string, SphereCheck>();
     this.entries = checks.map((check) => this.entry(check, kept, load));
   }
 
@@ -111,8 +113,8 @@ export class GravitySearch {
     for (const entry of this.entries) this.offer(entry, Float64Array.from(entry.pose));
   }
 
-  private entry(check: CheckForm, kept: Map<string, GravityCheck>, load: ChainCase): Entry {
-    const searches = new Map<string, GravityCheck>();
+  private entry(check: CheckForm, kept: Map<string, SphereCheck>, load: ChainCase): Entry {
+    const searches = new Map<string, SphereCheck>();
     let floor = Number.NEGATIVE_INFINITY;
     for (const f of check.forms.flatMap(linearParts)) {
       if (f.rows === 0 && f.l.every((v) => v === 0)) {
@@ -121,7 +123,8 @@ export class GravitySearch {
       }
       // Checks of one joint share forms (thrust by size and each way): one search serves them all.
       const key = `${check.joint} ${f.P.join()} ${f.l.join()}`;
-      const search = kept.get(key) ?? new GravityCheck(this.sets, check.joint, f, this.gravity.g, this.gravity.down);
+      const Kind = f.rows === 3 ? FanCheck : GravityCheck;
+      const search = kept.get(key) ?? new Kind(this.sets, check.joint, f, this.gravity.g, this.gravity.down);
       kept.set(key, search);
       searches.set(key, search);
     }
@@ -130,7 +133,7 @@ export class GravitySearch {
     const finite = Number.isFinite(ceiling) && load.mass.every(Number.isFinite);
     return {
       check,
-      searches: list,
+      searches: list.map((search) => ({ search, bound: Number.POSITIVE_INFINITY })),
       floor,
       found: Number.NEGATIVE_INFINITY,
       pose: new Float64Array(this.chain.n),
@@ -159,18 +162,20 @@ export class GravitySearch {
   private refine(entry: Entry, level: number, gap: number): void {
     const wanted = entry.found > 0 ? entry.found / (1 - 0.95 * gap) : 0;
     let bound = entry.floor;
-    for (const search of entry.searches) {
-      const enough = Math.max(entry.found * (1 + 1e-6), wanted * (1 - overshoot(level, search.stepCount)));
-      let b = search.cap(level, enough);
-      if (b > wanted) b = Math.min(b, search.bound(level, enough));
-      if (!(b <= bound)) bound = b;
+    for (const one of entry.searches) {
+      // A form that stays below what is attained, or allowed by the gap, needs no finer look.
+      if (one.bound > wanted) {
+        const { search } = one;
+        const enough = Math.max(entry.found * (1 + 1e-6), wanted * (1 - overshoot(level, search.stepCount)));
+        const b = search.best(level, wanted, enough);
+        if (!(b >= one.bound)) one.bound = b;
+        const pose = new Float64Array(this.chain.n);
+        search.follow(pose, Math.min(level, 2), entry.found);
+        this.offer(entry, pose);
+      }
+      if (!(one.bound <= bound)) bound = one.bound;
     }
     entry.bound = Math.min(entry.bound, bound + ROUNDING * entry.ceiling);
-    for (const search of entry.searches) {
-      const pose = new Float64Array(this.chain.n);
-      search.follow(pose, Math.min(level, 2), entry.found);
-      this.offer(entry, pose);
-    }
     if (level <= 1) this.offerNeighbour(entry);
     entry.level = level;
     raiseByRounding(entry);
