@@ -9,7 +9,7 @@ import { isRingParts, jointParts } from '../capacity/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { type Chain, type ChainCase, flattenArm, WRENCH } from '../mechanics/chain.ts';
 import { bearingDuty, dutySystem, NOTHING, type Run } from './dutyBearing.ts';
-import { lengthBounds, type TravelBounds } from './dutyBounds.ts';
+import { sphereBounds, type TravelBounds } from './dutyBounds.ts';
 import { pathWear } from './dutyPath.ts';
 import type { DutyBearing, DutyResult, JointSegment, PartSegment, SegmentResult } from './dutyResult.ts';
 import { travelLoads } from './dutyTravel.ts';
@@ -17,7 +17,7 @@ import { travelLoads } from './dutyTravel.ts';
 const TURN = 2 * Math.PI;
 
 export interface DutyOptions {
-  /** Default: `lengthBounds`. */
+  /** Default: `sphereBounds`. */
   readonly bounds?: TravelBounds;
 }
 
@@ -31,7 +31,7 @@ export function dutyStudy(arm: Arm, chain: Chain = flattenArm(arm), options: Dut
     return names.map((side) => ({ jointIndex, joint, side, part: dutyPart(parts, side) }));
   });
   const known = sides.flatMap(({ part }) => ('value' in part ? [part.value] : []));
-  const bounds = options.bounds ?? lengthBounds;
+  const bounds = options.bounds ?? sphereBounds;
   const runs = arm.duty.map((segment) => runSegment(arm, chain, segment, known, bounds));
   const reliability = targetsOf(arm).reliability.value ?? 0.9;
   let index = 0;

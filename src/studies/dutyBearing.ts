@@ -41,7 +41,10 @@ export function bearingDuty(
     ...common,
     life: life.value,
     attainedLife: 'value' in attained ? attained.value : null,
-    notes: [...new Set([...part.notes, ...life.value.notes, ...smallArcs(part, runs)])],
+    // Remarks on the load are about the loads found: a wide bound is not what the bearing sees.
+    notes: [
+      ...new Set([...part.notes, ...('value' in attained ? attained.value.notes : []), ...smallArcs(part, runs)]),
+    ],
   };
 }
 
@@ -53,7 +56,6 @@ function smallArcs(part: DutyPart, runs: readonly Run[]): readonly string[] {
   const critical = criticalHalfSwing(geometry.value);
   let swept = 0;
   let small = 0;
-  let smallest = Number.POSITIVE_INFINITY;
   runs.forEach(({ segment, swings }) => {
     const joint = segment.joints[part.joint]!;
     const mine = swings[part.joint];
@@ -61,14 +63,10 @@ function smallArcs(part: DutyPart, runs: readonly Run[]): readonly string[] {
     const share = mine ? smallSwingShare(mine, critical) : joint.halfSwings.some((half) => !(half >= critical)) ? 1 : 0;
     swept += weight;
     small += weight * share;
-    for (const half of joint.halfSwings) smallest = Math.min(smallest, half);
   });
   if (!(small > 0)) return [];
-  const degrees = (angle: number) => `±${((angle * 180) / Math.PI).toFixed(1)}°`;
   const percent = Math.max(1, Math.round((100 * small) / swept));
-  return [
-    `${sentence('small-arc')}: ${percent} % of what it turns (smallest swing ${degrees(smallest)}, tracks meet from ${degrees(critical)})`,
-  ];
+  return [`${sentence('small-arc')} (${percent} % of what it turns)`];
 }
 
 function bushingDuty(

@@ -8,11 +8,12 @@
  * **What a case leaves free.** A tip force of direction `any` points, at each pose and for each bearing, where it loads it most. A case
  * with `motion` may at each pose have any speed and acceleration within its limits, or those of the path, whichever load more: a path of
  * few poses does not know how hard the arm is stopped. Radial load, thrust and moment each take their worst, together or not, so the load is never
- * less than what can happen. Such cases are looked at every `FREE_STEP` of any joint.
+ * less than what can happen. In motion both branches of a gear or belt count, whatever the sign of the torque. Such cases are looked at
+ * every `FREE_STEP` of any joint.
  */
-import { angleAt, type DutyPart, motionAt, type PathMotion, turnsIn } from '../capacity/duty/index.ts';
+import { angleAt, anyTorque, type DutyPart, motionAt, type PathMotion, turnsIn } from '../capacity/duty/index.ts';
 import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
-import { checkValue } from '../mechanics/form.ts';
+import { type CheckForm, checkValue } from '../mechanics/form.ts';
 import { freeScratch, hasFree, newFreeWorst, worstOverFree } from '../mechanics/freeLoads.ts';
 import { newPoseLoad, poseLoad, poseLoadScratch } from '../mechanics/freeLoadsPose.ts';
 import { dynamicLoads, poseScratch } from '../mechanics/newtonEuler.ts';
@@ -64,6 +65,8 @@ class PathRun {
   private readonly path: PathMotion;
   private readonly parts: readonly DutyPart[];
   private readonly free: boolean;
+  /** Sizes of each part, in motion without the ranges of the torque. */
+  private readonly checks: readonly (readonly CheckForm[])[];
   /** The case with the path's own motion: its tip force stays free, its rates do not. */
   private readonly driven: ChainCase;
   private readonly q: Float64Array;
@@ -96,6 +99,7 @@ class PathRun {
     this.path = path;
     this.parts = parts;
     this.free = hasFree(load);
+    this.checks = parts.map(({ sizes }) => (load.speed ? sizes.map(anyTorque) : sizes));
     this.driven = { ...load, speed: null, accel: null };
     this.q = flat(n);
     this.rates = { speed: flat(n), accel: flat(n) };
@@ -201,7 +205,7 @@ class PathRun {
     for (let b = 0; b < parts.length; b++) {
       const part = parts[b]!;
       const at = WRENCH * part.joint;
-      const P = this.free ? this.freely(part) : part.at(w, at);
+      const P = this.free ? this.freely(b) : part.at(w, at);
       // A load that is not a number stays one.
       if (!(P <= out.peak[b]!)) {
         out.peak[b] = P;
@@ -223,11 +227,13 @@ class PathRun {
   }
 
   /** A load that nothing exceeds which the case or the path can put on a part here. */
-  private freely(part: DutyPart): number {
+  private freely(b: number): number {
+    const part = this.parts[b]!;
+    const checks = this.checks[b]!;
     const { at, load, driven, found, foundScratch, sizes, w } = this;
     const o = WRENCH * part.joint;
-    for (let s = 0; s < part.sizes.length; s++) {
-      const check = part.sizes[s]!;
+    for (let s = 0; s < checks.length; s++) {
+      const check = checks[s]!;
       let most = load.speed ? worstOverFree(check, load, at, found, foundScratch) : Number.NEGATIVE_INFINITY;
       let along: number;
       if (load.force === 'any') {

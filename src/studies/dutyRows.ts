@@ -166,7 +166,7 @@ function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing)
   const place = placeOf(arm, chain, one, bushing.segment);
   const found = anywhere ? bushing.attainedPv : bushing.pv;
   const gap = bushing.pv > 0 ? (bushing.pv - found) / bushing.pv : 0;
-  const wear = `wear depth of 1000 h: wear factor × ${(bushing.wearRate * 3.6e6).toPrecision(3)} Pa·m (slides ${(bushing.slid * 3.6e3).toPrecision(3)} km)`;
+  const wear = 'wear depth is wear factor times pressure times distance: ask the maker for the factor';
   const row: CheckRow = {
     ...pv,
     ...place,

@@ -60,7 +60,7 @@ export function pathMotion(
     const row = pose[k]!;
     if (row.length !== n) throw new RangeError(`a pose of ${row.length} angles for ${n} joints`);
     if (k > 0 && !(time[k]! > time[k - 1]!)) throw new RangeError(`time ${time[k]} does not rise`);
-    flat.set(row, k * n);
+    for (let j = 0; j < n; j++) flat[k * n + j] = row[j]!;
   }
   let closed = true;
   for (let j = 0; j < n; j++) {
@@ -110,10 +110,11 @@ function openBends(time: Float64Array, pose: Float64Array, n: number, M: Float64
   above[1]! -= h(0) * first;
   main[last - 1]! += h(last - 1) * (1 + end);
   below[last - 1]! -= h(last - 1) * end;
+  const matrix = factored(below, main, above, 1, last - 1);
   const right = new Float64Array(rows);
   for (let j = 0; j < n; j++) {
     for (let k = 1; k < last; k++) right[k] = 6 * (chord(time, pose, n, k, j) - chord(time, pose, n, k - 1, j));
-    solveTridiagonal(below, main, above, right, 1, last - 1);
+    solve(matrix, right);
     for (let k = 1; k < last; k++) M[k * n + j] = right[k]!;
     M[j] = (1 + first) * right[1]! - first * right[2]!;
     M[last * n + j] = (1 + end) * right[last - 1]! - end * right[last - 2]!;
@@ -128,7 +129,12 @@ function periodicBends(time: Float64Array, pose: Float64Array, n: number, M: Flo
   const before = (k: number) => (k === 0 ? count - 1 : k - 1);
   const right = new Float64Array(count);
   const load = (j: number) => {
-    for (let k = 0; k < count; k++) right[k] = 6 * (chord(time, pose, n, k, j) - chord(time, pose, n, before(k), j));
+    let slope = chord(time, pose, n, count - 1, j);
+    for (let k = 0; k < count; k++) {
+      const next = chord(time, pose, n, k, j);
+      right[k] = 6 * (next - slope);
+      slope = next;
+    }
   };
   const store = (j: number) => {
     for (let k = 0; k < count; k++) M[k * n + j] = right[k]!;
@@ -159,38 +165,47 @@ function periodicBends(time: Float64Array, pose: Float64Array, n: number, M: Flo
   const gamma = -main[0]!;
   main[0]! -= gamma;
   main[count - 1]! -= (corner * corner) / gamma;
+  const matrix = factored(below, main, above, 0, count - 1);
   const u = new Float64Array(count);
   u[0] = gamma;
   u[count - 1] = corner;
-  solveTridiagonal(below, main, above, u, 0, count - 1);
+  solve(matrix, u);
   const scale = 1 + u[0]! + (corner / gamma) * u[count - 1]!;
   for (let j = 0; j < n; j++) {
     load(j);
-    solveTridiagonal(below, main, above, right, 0, count - 1);
+    solve(matrix, right);
     const share = (right[0]! + (corner / gamma) * right[count - 1]!) / scale;
     for (let k = 0; k < count; k++) right[k]! -= share * u[k]!;
     store(j);
   }
 }
 
-/** Solves in place on [from, to]; diagonally dominant, so no pivoting. The matrix is left as it is. */
-function solveTridiagonal(
-  below: Float64Array,
-  main: Float64Array,
-  above: Float64Array,
-  x: Float64Array,
-  from: number,
-  to: number,
-): void {
-  const pivot = new Float64Array(to + 1);
-  pivot[from] = main[from]!;
+/** A tridiagonal matrix on [from, to], factored once: diagonally dominant, so no pivoting. */
+interface Factored {
+  readonly from: number;
+  readonly to: number;
+  /** below_k / pivot_{k-1}, 1 / pivot_k and above_k. */
+  readonly lower: Float64Array;
+  readonly inverse: Float64Array;
+  readonly above: Float64Array;
+}
+
+function factored(below: Float64Array, main: Float64Array, above: Float64Array, from: number, to: number): Factored {
+  const lower = new Float64Array(to + 1);
+  const inverse = new Float64Array(to + 1);
+  inverse[from] = 1 / main[from]!;
   for (let k = from + 1; k <= to; k++) {
-    const w = below[k]! / pivot[k - 1]!;
-    pivot[k] = main[k]! - w * above[k - 1]!;
-    x[k]! -= w * x[k - 1]!;
+    lower[k] = below[k]! * inverse[k - 1]!;
+    inverse[k] = 1 / (main[k]! - lower[k]! * above[k - 1]!);
   }
-  x[to]! /= pivot[to]!;
-  for (let k = to - 1; k >= from; k--) x[k] = (x[k]! - above[k]! * x[k + 1]!) / pivot[k]!;
+  return { from, to, lower, inverse, above };
+}
+
+/** Solves in place. */
+function solve({ from, to, lower, inverse, above }: Factored, x: Float64Array): void {
+  for (let k = from + 1; k <= to; k++) x[k]! -= lower[k]! * x[k - 1]!;
+  x[to]! *= inverse[to]!;
+  for (let k = to - 1; k >= from; k--) x[k] = (x[k]! - above[k]! * x[k + 1]!) * inverse[k]!;
 }
 
 /** Pose, speed and acceleration at the share (0 to 1) of piece k, to `q`, `v`, `a` [n]. Nothing is allocated. */

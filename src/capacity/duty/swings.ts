@@ -19,27 +19,36 @@ export interface PathSwings {
 }
 
 /** Angles of joint j at the poses and at its turns between them, in order. */
-function angles(path: PathMotion, j: number): number[] {
+function angles(path: PathMotion, j: number): Float64Array {
+  const { n, rows, pose } = path;
   const turns = new Float64Array(2);
-  const list = [path.pose[j]!];
-  for (let k = 0; k + 1 < path.rows; k++) {
+  const list = new Float64Array(3 * rows);
+  let size = 0;
+  list[size++] = pose[j]!;
+  for (let k = 0; k + 1 < rows; k++) {
     const count = turnsIn(path, k, j, turns);
-    for (let c = 0; c < count; c++) list.push(angleAt(path, k, turns[c]!, j));
-    list.push(path.pose[(k + 1) * path.n + j]!);
+    for (let c = 0; c < count; c++) list[size++] = angleAt(path, k, turns[c]!, j);
+    list[size++] = pose[(k + 1) * n + j]!;
   }
-  return list;
+  return list.subarray(0, size);
 }
 
-/** The extremes among a list of angles that lie apart by more than the dead band, in turn high and low, with both ends. */
-function extremes(list: readonly number[], band: number): number[] {
-  const found = [list[0]!];
-  let peak = list[0]!;
+/**
+ * The extremes among a list of angles that lie apart by more than the dead band, in turn high and low, with both ends. The list is read
+ * once round from `start`; its last entry stands for its first.
+ */
+function extremes(list: Float64Array, start: number, band: number): number[] {
+  const count = list.length;
+  const first = list[start]!;
+  const found = [first];
+  let peak = first;
   let way = 0;
-  for (const q of list) {
+  for (let k = 0; k < count; k++) {
+    const at = start + k < count ? start + k : start + k - count + 1;
+    const q = list[at]!;
     if (way === 0) {
-      // The start is whatever lies furthest the other way of the first stroke.
-      if (Math.abs(q - found[0]!) > band) {
-        way = Math.sign(q - found[0]!);
+      if (Math.abs(q - first) > band) {
+        way = Math.sign(q - first);
         peak = q;
       }
     } else if (way * (q - peak) >= 0) peak = q;
@@ -57,20 +66,18 @@ function extremes(list: readonly number[], band: number): number[] {
 export function pathSwings(path: PathMotion, j: number, band = DEAD_BAND): PathSwings {
   const list = angles(path, j);
   let swept = 0;
-  for (let k = 1; k < list.length; k++) swept += Math.abs(list[k]! - list[k - 1]!);
-  const comesBack = Math.abs(list[list.length - 1]! - list[0]!) < band;
-  let round = list;
-  if (path.closed && comesBack) {
-    // Begin at the highest angle, so that no stroke is cut in two.
-    let top = 0;
-    for (let k = 1; k < list.length; k++) if (list[k]! > list[top]!) top = k;
-    round = [...list.slice(top), ...list.slice(1, top + 1)];
+  let top = 0;
+  for (let k = 1; k < list.length; k++) {
+    swept += Math.abs(list[k]! - list[k - 1]!);
+    if (list[k]! > list[top]!) top = k;
   }
-  const found = extremes(round, band);
+  const around = path.closed && Math.abs(list[list.length - 1]! - list[0]!) < band;
+  // Round a closed path from its highest angle, so that no stroke is cut in two.
+  const found = extremes(list, around ? top : 0, band);
   const strokes = found.length - 1;
-  if (strokes <= 0) return { swept, reversals: 0, halfSwings: new Float64Array(0), turnedOn: swept };
-  const around = path.closed && comesBack;
-  if (!around && strokes === 1) return { swept, reversals: 0, halfSwings: new Float64Array(0), turnedOn: swept };
+  if (strokes <= 0 || (!around && strokes === 1)) {
+    return { swept, reversals: 0, halfSwings: new Float64Array(0), turnedOn: swept };
+  }
   const halfSwings = Float64Array.from({ length: strokes }, (_, k) => Math.abs(found[k + 1]! - found[k]!) / 2);
   return { swept, reversals: around ? strokes : strokes - 1, halfSwings, turnedOn: 0 };
 }

@@ -6,6 +6,7 @@ export * from './elasticTilt.ts';
 export * from './fits.ts';
 export * from './lostMotion.ts';
 export * from './playTilt.ts';
+export * from './ringPlay.ts';
 export * from './ringTolerance.ts';
 export * from './tipError.ts';
 export * from './workingClearance.ts';

@@ -1,0 +1,89 @@
+/**
+ * Play and stiffness as rows beside those of the other checks:
+ *
+ *   - `tip error` of the arm (`jointIndex` -1), m: `value` attained, `bound` proved; it passes by the bound alone.
+ *   - `play tilt` of each joint, rad each way, and `lost motion` of each bearing of a pair, m: reported only.
+ */
+import type { Arm } from '../arm/arm.ts';
+import { targetsOf } from '../capacity/targets.ts';
+import { judge } from './assessVerdict.ts';
+import { WHOLE_ARM } from './dutyRows.ts';
+import type { JointPlayResult, PlayResult } from './play.ts';
+import type { CheckRow, Wrench } from './results.ts';
+
+const NOWHERE: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [Number.NaN, Number.NaN, Number.NaN] };
+
+type Head = Pick<CheckRow, 'joint' | 'jointIndex' | 'bearing' | 'check' | 'unit' | 'value'>;
+
+function reported(head: Head): CheckRow {
+  return {
+    ...head,
+    case: '',
+    pose: [],
+    free: null,
+    wrench: NOWHERE,
+    bound: null,
+    gap: null,
+    certified: null,
+    allowable: null,
+    utilisation: null,
+    verdict: null,
+    reason: null,
+    source: null,
+  };
+}
+
+function missing(head: Omit<Head, 'value'>, reason: string): CheckRow {
+  return { ...reported({ ...head, value: Number.NaN }), verdict: 'unassessed', reason };
+}
+
+/** Rows of a play study: joints from ground to tip, then the tip. */
+export function playRows(arm: Arm, play: PlayResult): readonly CheckRow[] {
+  return [...play.joints.flatMap((one) => jointRows(arm, one)), tipRow(arm, play)];
+}
+
+function jointRows(arm: Arm, one: JointPlayResult): readonly CheckRow[] {
+  const head = { joint: one.joint, jointIndex: one.jointIndex };
+  const tilt = { ...head, bearing: null, check: 'play tilt', unit: 'rad' };
+  const reason = one.unassessed.find((words) => words.startsWith('play')) ?? one.unassessed[0];
+  const notes = one.notes.length > 0 ? one.notes.join('; ') : null;
+  const rows =
+    one.tilt === null
+      ? [missing(tilt, reason ?? 'the play is not known')]
+      : [{ ...reported({ ...tilt, value: one.tilt }), source: notes }];
+  const lost = one.motion.map((motion): CheckRow => {
+    const name = { ...head, bearing: motion.side, check: 'lost motion', unit: 'm' };
+    if (motion.shift === null || !motion.from) return missing(name, motion.unassessed ?? 'the play is not known');
+    const words = motion.reverses ? 'the load changes side within the travel' : 'the load keeps its side';
+    return {
+      ...reported({ ...name, value: motion.shift }),
+      case: motion.from.case,
+      pose: motion.from.pose,
+      source: arm.duty ? `${words}; along the duty it jumps over ${motion.onPath.length} times` : words,
+    };
+  });
+  return [...rows, ...lost];
+}
+
+function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
+  const head = { joint: arm.name, jointIndex: WHOLE_ARM, bearing: null, check: 'tip error', unit: 'm' };
+  if (tip.found === null || tip.bound === null) {
+    const open = joints.flatMap((one) => one.unassessed.map((words) => `${one.joint}: ${words}`));
+    return missing(head, open.join('; '));
+  }
+  const target = targetsOf(arm).tipError;
+  const unassessed = target.value === null ? target.source : null;
+  const notes = [...new Set(joints.flatMap((one) => one.notes.map((note) => note.replace(/^(A|B|ring): /, ''))))];
+  return {
+    ...reported({ ...head, value: tip.found }),
+    case: tip.case,
+    pose: tip.pose,
+    free: tip.tipForce ? { tipForce: tip.tipForce, speed: null, accel: null } : null,
+    bound: tip.bound,
+    gap: tip.bound > 0 ? (tip.bound - tip.found) / tip.bound : 0,
+    certified: false,
+    allowable: target.value,
+    ...judge({ allowable: target.value, floor: 0, beyond: null, unassessed }, tip.found, tip.bound, 'travel'),
+    source: [target.source, ...notes].join('; '),
+  };
+}
