@@ -1,0 +1,167 @@
+/**
+ * The certified worst as a job for workers, anytime: passes of a falling gap, each over all cases, so that a first answer is there at once and
+ * better ones follow; a stop, or the end of the time allowed, keeps the best so far. A pass leaves out what an earlier one closed.
+ */
+import type { Arm } from '../arm/arm.ts';
+import { capacityChecks, capacityForms } from '../capacity/index.ts';
+import { type Chain, flattenArm } from '../mechanics/chain.ts';
+import type { CheckForm } from '../mechanics/form.ts';
+import { gravityLoad } from '../mechanics/gravityLoad.ts';
+import type { JobKind, JobPool } from '../mechanics/job.ts';
+import type { CheckRow } from './results.ts';
+import {
+  CaseSearch,
+  type CaseWorst,
+  DEFAULT_GAP,
+  DEFAULT_SECONDS,
+  type WorstResult,
+  worstChecks,
+  worstResult,
+} from './worstArm.ts';
+
+/** Plain data. */
+export interface WorstShared {
+  readonly arm: Arm;
+  /** Gap of this pass. */
+  readonly gap: number;
+  /** Time of the clock (`Date.now`) at which to stop, ms. */
+  readonly end: number;
+}
+
+/** A case, or the checks of one joint of it (chain index), where those share no work with the others. */
+export interface WorstInput {
+  readonly caseIndex: number;
+  readonly joint: number | null;
+}
+
+/** Every check that the certified worst covers: loads of joints and bearings, and the demands on capacity that are convex. */
+export function armChecks(arm: Arm, chain: Chain): readonly CheckForm[] {
+  return worstChecks(arm, chain, capacityForms(capacityChecks(arm, chain)));
+}
+
+function inputChecks(checks: readonly CheckForm[], input: WorstInput): readonly CheckForm[] {
+  return input.joint === null ? checks : checks.filter((check) => check.joint === input.joint);
+}
+
+export const worstJob: JobKind<WorstShared, WorstInput, CaseWorst> = {
+  name: 'worst',
+  start: ({ arm, gap, end }) => {
+    const chain = flattenArm(arm);
+    const checks = armChecks(arm, chain);
+    return (input) => {
+      const search = new CaseSearch(arm, chain, input.caseIndex, inputChecks(checks, input), gap);
+      search.work(() => Date.now() > end);
+      return search.result();
+    };
+  },
+};
+
+/** Gaps of the passes before the one asked for. */
+const PASSES = [0.1, 0.02] as const;
+
+export interface WorstRunOptions {
+  readonly pool: JobPool;
+  readonly gap?: number;
+  readonly seconds?: number;
+  readonly signal?: AbortSignal;
+  /** After each part: the best so far, and how much of the present pass is done (0 to 1). */
+  readonly onBetter?: (best: WorstResult, part: number) => void;
+}
+
+/** Searches until every gap is closed, the time is up or the signal stops it. Rejects with `JobFailed` where a worker fails. */
+export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<WorstResult> {
+  const gap = options.gap ?? DEFAULT_GAP;
+  const begin = Date.now();
+  const end = begin + 1000 * (options.seconds ?? DEFAULT_SECONDS);
+  const chain = flattenArm(arm);
+  const checks = armChecks(arm, chain);
+  const best = new BestRows(chain, checks);
+  const passes = [...PASSES.filter((pass) => pass > 2 * gap), gap];
+  let stopped = false;
+  const result = () => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end);
+  for (const pass of passes) {
+    const inputs = allInputs(chain).filter((input) => !best.closed(input, gap));
+    if (inputs.length === 0) break;
+    const finished = await options.pool.run({
+      kind: worstJob,
+      shared: { arm, gap: pass, end },
+      chunks: inputs.length,
+      input: (chunk) => inputs[chunk]!,
+      onOutput: (chunk, output) => best.take(inputs[chunk]!, output),
+      onProgress: (done) => options.onBetter?.(result(), done / inputs.length),
+      ...(options.signal ? { signal: options.signal } : {}),
+    });
+    stopped = finished.stopped;
+    if (stopped || Date.now() > end) break;
+  }
+  return result();
+}
+
+/** Long parts first, so that workers end together: cases for branch and bound joint by joint, then the others whole. */
+function allInputs(chain: Chain): readonly WorstInput[] {
+  const whole = chain.cases.flatMap((load, caseIndex) =>
+    gravityLoad(chain, load) ? [{ caseIndex, joint: null }] : [],
+  );
+  const single = chain.cases.flatMap((load, caseIndex) =>
+    gravityLoad(chain, load) ? [] : chain.names.map((_, joint) => ({ caseIndex, joint })),
+  );
+  return [...single, ...whole];
+}
+
+/** The best known of every check and case; what no pass has reached yet is not a number, under no bound. */
+class BestRows {
+  private readonly checks: readonly CheckForm[];
+  private readonly rows: (CheckRow | null)[][];
+
+  constructor(chain: Chain, checks: readonly CheckForm[]) {
+    this.checks = checks;
+    this.rows = chain.cases.map(() => checks.map(() => null));
+  }
+
+  take(input: WorstInput, output: CaseWorst): void {
+    this.places(input).forEach((place, k) => {
+      const row = output.rows[k]!;
+      const before = this.rows[input.caseIndex]![place];
+      this.rows[input.caseIndex]![place] = before ? better(before, row) : row;
+    });
+  }
+
+  closed(input: WorstInput, gap: number): boolean {
+    return this.places(input).every((place) => {
+      const row = this.rows[input.caseIndex]![place];
+      return row?.gap != null && row.gap <= gap;
+    });
+  }
+
+  /** Rows so far; empty while some part was never reached. */
+  result(gap: number, seconds: number, late: boolean): WorstResult {
+    const cases = this.rows.map((rows, caseIndex) => ({ caseIndex, rows: rows.filter((row) => row !== null) }));
+    if (cases.some(({ rows }) => rows.length < this.checks.length)) {
+      return { rows: [], eachCase: [], seconds, certified: false, partial: true };
+    }
+    const certain = cases.map(({ caseIndex, rows }) => ({
+      caseIndex,
+      rows: rows.map((row) => ({
+        ...row,
+        certified: row.gap !== null && row.gap <= gap && Number.isFinite(row.value),
+      })),
+    }));
+    const done = worstResult(certain, gap, seconds, false);
+    return { ...done, partial: late && !done.certified };
+  }
+
+  private places(input: WorstInput): readonly number[] {
+    return this.checks.flatMap((check, place) => (input.joint === null || check.joint === input.joint ? [place] : []));
+  }
+}
+
+/** The higher value under the lower bound: both hold. A failed value stays. */
+function better(before: CheckRow, row: CheckRow): CheckRow {
+  if (Number.isNaN(before.value)) return before;
+  const found = row.value > before.value || Number.isNaN(row.value) ? row : before;
+  const lower = row.bound! < before.bound! ? row : before;
+  if (found === lower) return found;
+  const bound = Math.max(lower.bound!, found.value);
+  const gap = lower.gap === 0 || found.gap === 0 ? 0 : bound > 0 ? (bound - found.value) / bound : 0;
+  return { ...found, bound, gap };
+}
