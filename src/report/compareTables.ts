@@ -40,10 +40,8 @@ export function compareTable(result: CompareResult, system: UnitSystem = 'metric
   const { clevis, cantilever } = result;
   const shown = (row: CheckRow) => shownUnit(row.unit, system);
   const all = [...clevis.rows, ...cantilever.rows];
-  const byUnit = [...new Set(all.map((row) => row.unit))].map((unit) =>
-    decimalsFor(all.filter((row) => row.unit === unit).map((row) => shown(row).of(row.value))),
-  );
-  const decimals = Math.max(...byUnit);
+  const decimals = (unit: string) =>
+    decimalsFor(all.filter((row) => row.unit === unit).map((row) => shown(row).of(row.value)));
   const line = (name: string, bearing: string | null, a: CheckRow, b: CheckRow, ratio: number | null): Cell[] => [
     name,
     bearing,
@@ -59,13 +57,15 @@ export function compareTable(result: CompareResult, system: UnitSystem = 'metric
     line(row.check, row.bearing, row, cantilever.rows[k]!, result.ratios[k]!.ratio),
   );
   const worst = line('radial', 'A or B', clevis.worst, cantilever.worst, result.ratios.at(-1)!.ratio);
+  const shownRows = [...clevis.rows.slice(0, 2), clevis.worst, ...clevis.rows.slice(2)];
+  const byRow = shownRows.map((row) => decimals(row.unit));
   return {
     title: 'Worst loads',
     columns: [
       words('check'),
       words('bearing'),
-      { title: 'clevis', unit: null, decimals },
-      { title: 'cantilever', unit: null, decimals },
+      { title: 'clevis', unit: null, decimals: byRow },
+      { title: 'cantilever', unit: null, decimals: byRow },
       words('unit'),
       { title: 'ratio', unit: null, decimals: 3 },
       { title: 'clevis pose', unit: '°', decimals: null },

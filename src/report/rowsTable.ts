@@ -1,5 +1,5 @@
 /** Check rows of a sweep, a worst-pose search or an assessment as one table; only the columns that the rows fill. */
-import type { CheckRow } from '../studies/results.ts';
+import { type CheckRow, isMissing } from '../studies/results.ts';
 import type { UnitSystem } from '../units/format.ts';
 import { poseText, shownUnit } from './shown.ts';
 import { type Cell, type Column, decimalsFor, type Table } from './table.ts';
@@ -15,8 +15,8 @@ function words(title: string): Column {
   return { title, unit: null, decimals: null };
 }
 
-/** Decimals for a column of several units: enough for each unit's largest value. */
-function valueDecimals(rows: readonly CheckRow[], system: UnitSystem): number {
+/** Decimals row by row: those that each unit's largest value needs. */
+function valueDecimals(rows: readonly CheckRow[], system: UnitSystem): readonly number[] {
   const byUnit = new Map<string, number[]>();
   for (const row of rows) {
     const values = byUnit.get(row.unit) ?? [];
@@ -24,20 +24,20 @@ function valueDecimals(rows: readonly CheckRow[], system: UnitSystem): number {
     const shown = shownUnit(row.unit, system);
     for (const value of [row.value, row.bound, row.allowable]) if (value !== null) values.push(shown.of(value));
   }
-  return Math.max(0, ...[...byUnit.values()].map((values) => decimalsFor(values)));
+  const decimals = new Map([...byUnit].map(([unit, values]) => [unit, decimalsFor(values)]));
+  return rows.map((row) => decimals.get(row.unit)!);
 }
 
 /** What a row is held against, in words: never silent about what failed or was not assessed. */
 function verdictText(row: CheckRow): string | null {
-  if (Number.isNaN(row.value)) return 'failed';
-  return row.verdict;
+  return Number.isNaN(row.value) && !isMissing(row) ? 'failed' : row.verdict;
 }
 
 export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions = {}): Table {
   const system = options.system ?? 'metric';
   const group = options.group ?? true;
   const bounded = rows.some((row) => row.bound !== null);
-  const judged = rows.some((row) => row.verdict !== null || Number.isNaN(row.value));
+  const judged = rows.some((row) => verdictText(row) !== null);
   const explained = judged && rows.some((row) => row.reason !== null);
   const decimals = valueDecimals(rows, system);
   const columns: Column[] = [
@@ -68,16 +68,16 @@ export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions =
     return [
       name,
       row.bearing,
-      row.check,
-      value(row.value),
+      row.where ? `${row.check} (${row.where})` : row.check,
+      isMissing(row) ? null : value(row.value),
       ...(bounded ? [value(row.bound)] : []),
       shown.unit,
       ...(bounded
         ? [row.gap === null ? null : row.gap * 100, row.certified === null ? null : row.certified ? 'yes' : 'no']
         : []),
       ...(judged ? [value(row.allowable), row.utilisation, verdictText(row)] : []),
-      row.case,
-      poseText(row.pose),
+      isMissing(row) ? null : row.case,
+      isMissing(row) ? null : poseText(row.pose),
       ...(explained ? [row.reason ?? ''] : []),
     ];
   });

@@ -7,8 +7,8 @@ export interface Column {
   readonly title: string;
   /** Of every number in the column; null where there is none or it stands in a column of its own. */
   readonly unit: string | null;
-  /** Decimals of the numbers of this column as text; null in a column of words. */
-  readonly decimals: number | null;
+  /** Decimals of the numbers of this column as text, for all rows or row by row; null in a column of words. */
+  readonly decimals: number | readonly number[] | null;
 }
 
 /** Words, a number in the unit of its column, or nothing. */
@@ -38,9 +38,12 @@ export function decimalsFor(values: Iterable<number>, digits = 4): number {
   return Math.min(6, Math.max(0, digits - 1 - Math.floor(Math.log10(largest))));
 }
 
-export function cellText(column: Column, cell: Cell): string {
+/** A cell as text; `row` counts from 0. */
+export function cellText(column: Column, cell: Cell, row: number): string {
   if (cell === null) return NOTHING;
-  return typeof cell === 'number' ? fixedText(cell, column.decimals ?? 3) : cell;
+  if (typeof cell === 'string') return cell;
+  const { decimals } = column;
+  return fixedText(cell, (typeof decimals === 'object' ? decimals?.[row] : decimals) ?? 3);
 }
 
 export function columnTitle(column: Column): string {

@@ -32,7 +32,7 @@ const ROW: CheckRow = {
 };
 
 function texts(table: Table): string[][] {
-  return table.rows.map((row) => row.map((cell, k) => cellText(table.columns[k]!, cell)));
+  return table.rows.map((row, r) => row.map((cell, k) => cellText(table.columns[k]!, cell, r)));
 }
 const titles = (table: Table) => table.columns.map((column) => column.title);
 
@@ -41,7 +41,7 @@ describe('rowsTable', () => {
     const plain = rowsTable([ROW, { ...ROW, bearing: null, check: 'moment', unit: 'N·m', value: 12.345 }]);
     expect(titles(plain)).toEqual(['joint', 'bearing', 'check', 'worst', 'unit', 'case', 'pose']);
     expect(texts(plain)).toEqual([
-      ['slew', 'A', 'radial', '812.44', 'N', 'carry', '-170,45.5'],
+      ['slew', 'A', 'radial', '812.4', 'N', 'carry', '-170,45.5'],
       ['', '–', 'moment', '12.35', 'N·m', 'carry', '-170,45.5'],
     ]);
   });

@@ -24,8 +24,8 @@ describe('numbers in tables', () => {
   });
 
   it('marks an empty cell and puts the unit in the title', () => {
-    expect(cellText(number(1), null)).toBe('–');
-    expect(cellText(words, 'slew')).toBe('slew');
+    expect(cellText(number(1), null, 0)).toBe('–');
+    expect(cellText(words, 'slew', 0)).toBe('slew');
     expect(columnTitle(number(1))).toBe('radial N');
     expect(columnTitle(words)).toBe('joint');
   });
