@@ -9,7 +9,6 @@ import { type Chain, type ChainCase, WRENCH, wrenchToFile } from '../mechanics/c
 import type { CheckForm } from '../mechanics/form.ts';
 import { type FreeWorst, freePart, hasFree, newFreeWorst } from '../mechanics/freeLoads.ts';
 import { newPoseLoad, type PoseLoad, poseLoad, poseLoadScratch } from '../mechanics/freeLoadsPose.ts';
-import { dutyGaps } from './assessDuty.ts';
 import { looseForms, type QuickScratch, quickScratch, worstAndBound } from './assessFree.ts';
 import { judge, type Scope } from './assessVerdict.ts';
 import type { CheckRow, Wrench } from './results.ts';
@@ -25,7 +24,7 @@ export interface ArmCapacity {
 
 export function armCapacity(arm: Arm, chain: Chain): ArmCapacity {
   const checks = capacityChecks(arm, chain);
-  return { checks, forms: checks.map(looseForms), missing: missingRows(arm, chain, checks) };
+  return { checks, forms: checks.map(looseForms), missing: missingRows(arm, checks) };
 }
 
 export interface PoseAssessment {
@@ -182,11 +181,11 @@ function joined(chain: Chain, row: CheckRow, check: CapacityCheck, options: Join
   };
 }
 
-/** A row for every check that cannot be computed at all, and for what only a duty can tell where the arm has none. */
-export function missingRows(arm: Arm, chain: Chain, checks: readonly CapacityCheck[]): readonly CheckRow[] {
+/** A row for every check that cannot be computed at all. What only a duty can tell has rows of its own (`dutyRows`). */
+function missingRows(arm: Arm, checks: readonly CapacityCheck[]): readonly CheckRow[] {
   const none: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [Number.NaN, Number.NaN, Number.NaN] };
   const missing = checks.filter((check) => !check.form && !check.atPose);
-  return [...missing, ...dutyGaps(arm, chain)].map((check) => ({
+  return missing.map((check) => ({
     ...head(arm, check),
     value: Number.NaN,
     case: '',

@@ -57,7 +57,7 @@ function governs(rows: readonly CheckRow[]): Governing {
 
 function why(row: CheckRow | null, held: number, over: number): string {
   if (row === null) return 'no check has an allowable to be held against';
-  const place = row.where === undefined ? '' : ` at the ${row.where}`;
+  const place = row.where === undefined ? '' : ` at ${row.where}`;
   if (over > 0) {
     return over === 1
       ? `${row.check}${place} is over its limit`
