@@ -3,7 +3,8 @@
  *
  * A case that leaves something free at a pose (a tip force of any direction, motion) gives a whole convex patch of bending moments there.
  * Its extent h_k in K directions of the section (`support`, exact for tip force and accelerations, a bound for speeds) makes a polygon round
- * it, whose corners join the history: never less than what can happen, more by at most 1/cos(π/K) - 1 (0.5 %) of the free part.
+ * it, whose corners join the history: never less than what can happen; more by at most 1/cos(π/K) - 1 (0.5 %) of the free part, apart from
+ * speeds and from a drive whose force turns about with the torque, which are bounded.
  *
  * A cycle depends on the extent of the history alone, so entries within the reach of others are dropped.
  */
@@ -47,6 +48,7 @@ export function caseLoads(chain: Chain, load: ChainCase, poses: Float64Array): C
 
 const DIRECTIONS = 32;
 const STEP = (2 * Math.PI) / DIRECTIONS;
+const RING = Array.from({ length: DIRECTIONS }, (_, k) => [Math.cos(k * STEP), Math.sin(k * STEP), 0]);
 const TORQUE = form({ P: [[0, 0, 0, 0, 0, 1]] });
 
 /** History of one side of a point of a joint's shaft in one case. `angles`: the joint's own, rad, one a pose. */
@@ -110,7 +112,13 @@ function torqueExtent(reduced: ReducedForm, joint: number, load: ChainCase, at: 
   return support(reduced, sign === 1 ? [1, 0, 0] : [-1, 0, 0]);
 }
 
-/** Extent of the bending moment in each direction, over the drive's branches that the torque can reach. */
+/** Weights of the torque beyond the end of a branch, as shares of what the drive makes of it in the form. */
+const WEIGHTS = [0, 0.5, 1, 2];
+
+/**
+ * Extent of the bending moment in each direction, over the drive's branches that the torque can reach. Where a branch holds from a torque
+ * on, any weight ≥ 0 of the torque beyond that end may be added and the extent stays one: the least of a few weights is taken.
+ */
 function extents(
   forms: readonly Form[],
   reduced: ReducedForm,
@@ -122,16 +130,34 @@ function extents(
   out: Float64Array,
 ): void {
   out.fill(Number.NEGATIVE_INFINITY);
-  const e = new Float64Array(3);
+  const own = new Float64Array(DIRECTIONS);
   for (const f of forms) {
     if (f.torqueFrom > most || f.torqueTo < least) continue;
-    reduceForm(reduced, f, joint, load, at, 0, 0);
-    for (let k = 0; k < DIRECTIONS; k++) {
-      e[0] = Math.cos(k * STEP);
-      e[1] = Math.sin(k * STEP);
-      const h = support(reduced, e);
-      if (!(h <= out[k]!)) out[k] = h;
+    own.fill(Number.POSITIVE_INFINITY);
+    const drive = Math.hypot(f.P[5]!, f.P[11]!);
+    for (const weight of WEIGHTS) {
+      if (weight === 0 || f.torqueFrom > least) lower(f, weight * drive, f.torqueFrom, reduced, joint, load, at, own);
+      if (weight > 0 && f.torqueTo < most) lower(f, -weight * drive, f.torqueTo, reduced, joint, load, at, own);
     }
+    for (let k = 0; k < DIRECTIONS; k++) if (!(own[k]! <= out[k]!)) out[k] = own[k]!;
+  }
+}
+
+/** Lowers the extents to those of the form plus `extra` times the torque beyond `limit`. */
+function lower(
+  f: Form,
+  extra: number,
+  limit: number,
+  reduced: ReducedForm,
+  joint: number,
+  load: ChainCase,
+  at: PoseLoad,
+  out: Float64Array,
+): void {
+  reduceForm(reduced, f, joint, load, at, extra, extra === 0 ? 0 : limit);
+  for (let k = 0; k < DIRECTIONS; k++) {
+    const h = support(reduced, RING[k]!);
+    if (!(h >= out[k]!)) out[k] = h;
   }
 }
 
