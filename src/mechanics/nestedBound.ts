@@ -17,8 +17,20 @@ import { WRENCH } from './chain.ts';
 import type { NestedCase } from './nestedCase.ts';
 import { type FormTable, LINE, ROWS } from './nestedForms.ts';
 
-/** Joint load of joint i from u and Y at their offsets into `w` [6]. */
-export function pairLoad(load: NestedCase, i: number, u: Flat, uAt: number, Y: Flat, yAt: number, w: Flat): void {
+/**
+ * Joint load of joint i from u and Y at their offsets into `w` at `at`; with `whole` false only what is linear in Y (for parts of Y).
+ */
+export function pairLoad(
+  load: NestedCase,
+  i: number,
+  u: Flat,
+  uAt: number,
+  Y: Flat,
+  yAt: number,
+  whole: boolean,
+  w: Flat,
+  at: number,
+): void {
   const { pairs, weight } = load;
   let fx = 0;
   let fy = 0;
@@ -33,7 +45,7 @@ export function pairLoad(load: NestedCase, i: number, u: Flat, uAt: number, Y: F
     const hx = Y[yAt + 3 * p]!;
     const hy = Y[yAt + 3 * p + 1]!;
     const hz = Y[yAt + 3 * p + 2]!;
-    const m = weight[pairs * i + p]!;
+    const m = whole ? weight[pairs * i + p]! : 0;
     fx += m * ux;
     fy += m * uy;
     fz += m * uz;
@@ -50,12 +62,12 @@ export function pairLoad(load: NestedCase, i: number, u: Flat, uAt: number, Y: F
     my += Y[t + 4]!;
     mz += Y[t + 5]!;
   }
-  w[0] = fx;
-  w[1] = fy;
-  w[2] = fz;
-  w[3] = mx;
-  w[4] = my;
-  w[5] = mz;
+  w[at] = fx;
+  w[at + 1] = fy;
+  w[at + 2] = fz;
+  w[at + 3] = mx;
+  w[at + 4] = my;
+  w[at + 5] = mz;
 }
 
 /** Value of check c at the joint load w [6]. */

@@ -19,9 +19,12 @@ const POSSIBLE = 2;
 
 /** Levels of the tree that a cell is held against. */
 const MOST_LEVELS = 2;
+/** Cells stand in blocks of this edge; a block found hopeless speaks for its cells. */
+const BLOCK = 4;
 
 export class NestedCells {
   private readonly state: Uint8Array;
+  private readonly blockState: Uint8Array;
   private readonly edge: number;
   private readonly load: NestedCase;
   private readonly bound: NestedBound;
@@ -32,8 +35,10 @@ export class NestedCells {
   private readonly centre: Flat;
   private readonly spread: Flat;
   private readonly w = new Float64Array(WRENCH);
+  private readonly leaf: Flat;
+  private readonly none: Flat;
 
-  /** `edge`: cells along an edge of the cube. `floor` is read by check. */
+  /** `blocks`: blocks of cells along an edge of the cube. `floor` is read by check. */
   constructor(
     load: NestedCase,
     table: FormTable,
@@ -41,7 +46,7 @@ export class NestedCells {
     tree: NestedTree,
     checks: Int32Array,
     floor: Float64Array,
-    edge: number,
+    blocks: number,
   ) {
     this.load = load;
     this.table = table;
@@ -49,10 +54,13 @@ export class NestedCells {
     this.tree = tree;
     this.checks = checks;
     this.floor = floor;
-    this.edge = edge;
-    this.state = new Uint8Array((6 * edge * edge) ** load.pairs * checks.length);
+    this.edge = BLOCK * blocks;
+    this.state = new Uint8Array((6 * this.edge ** 2) ** load.pairs * checks.length);
+    this.blockState = new Uint8Array((6 * blocks ** 2) ** load.pairs * checks.length);
     this.centre = new Float64Array(3 * load.pairs);
     this.spread = new Float64Array(load.pairs);
+    this.leaf = new Float64Array(load.width);
+    this.none = new Float64Array(load.blocks);
   }
 
   /** The cell of u at `at`. */
@@ -67,9 +75,34 @@ export class NestedCells {
     const at = cell * this.checks.length + number;
     const known = this.state[at]!;
     if (known !== UNKNOWN) return known === POSSIBLE;
-    const possible = this.examine(cell, this.checks[number]!);
+    const c = this.checks[number]!;
+    const possible = this.blockPossible(cell, number) && this.examine(cell, c, this.edge);
     this.state[at] = possible ? POSSIBLE : HOPELESS;
     return possible;
+  }
+
+  private blockPossible(cell: number, number: number): boolean {
+    const block = this.blockOf(cell);
+    const at = block * this.checks.length + number;
+    const known = this.blockState[at]!;
+    if (known !== UNKNOWN) return known === POSSIBLE;
+    const possible = this.examine(block, this.checks[number]!, this.edge / BLOCK);
+    this.blockState[at] = possible ? POSSIBLE : HOPELESS;
+    return possible;
+  }
+
+  private blockOf(cell: number): number {
+    if (this.load.pairs === 1) return this.blockOfSquare(cell);
+    const cells = 6 * this.edge ** 2;
+    const blocks = cells / BLOCK ** 2;
+    return blocks * this.blockOfSquare(Math.floor(cell / cells)) + this.blockOfSquare(cell % cells);
+  }
+
+  private blockOfSquare(square: number): number {
+    const { edge } = this;
+    const j = square % edge;
+    const row = (square - j) / edge;
+    return Math.floor(row / BLOCK) * (edge / BLOCK) + Math.floor(j / BLOCK);
   }
 
   private squareOf(x: number, y: number, z: number): number {
@@ -103,9 +136,9 @@ export class NestedCells {
     return (face * this.edge + i) * this.edge + j;
   }
 
-  /** Centre and radius of a cell of direction p, in the size of u_p. */
-  private place(p: number, cell: number): void {
-    const { edge, centre, spread } = this;
+  /** Centre and radius of a cell of direction p, in the size of u_p; `edge` of them along an edge of the cube. */
+  private place(p: number, cell: number, edge: number): void {
+    const { centre, spread } = this;
     const size = this.bound.size[p]!;
     const face = Math.floor(cell / (edge * edge));
     const i = Math.floor(cell / edge) % edge;
@@ -132,14 +165,14 @@ export class NestedCells {
     spread[p] = size * most * (1 + 1e-12);
   }
 
-  private examine(cell: number, c: number): boolean {
+  private examine(cell: number, c: number, edge: number): boolean {
     const { load, tree } = this;
-    const cells = 6 * this.edge * this.edge;
-    if (load.pairs === 2) this.place(0, Math.floor(cell / cells));
-    this.place(load.pairs - 1, cell % cells);
+    const cells = 6 * edge * edge;
+    if (load.pairs === 2) this.place(0, Math.floor(cell / cells), edge);
+    this.place(load.pairs - 1, cell % cells, edge);
     this.bound.direct(c, this.centre, 0);
-    if (this.reaches(c, tree.rootCentre, 0, tree.rootRadius)) return this.below(c, 0, 0);
-    return false;
+    if (!this.reaches(c, tree.rootCentre, 0, tree.rootRadius)) return false;
+    return tree.levels > 0 ? this.below(c, 0, 0) : this.inRow(c, 0);
   }
 
   /** Whether some child of a node, as deep as is worth the trouble, reaches the floor. */
@@ -147,15 +180,25 @@ export class NestedCells {
     const { tree, load } = this;
     const turns = tree.turns[level]!;
     const deeper = level + 1 < Math.min(tree.tabulated, MOST_LEVELS);
+    const last = level + 1 === tree.levels && level + 1 < MOST_LEVELS;
     for (let e = parent * turns; e < (parent + 1) * turns; e++) {
       if (!this.reaches(c, tree.centre[level]!, load.width * e, tree.radius[level]!)) continue;
-      if (!deeper || this.below(c, level + 1, e)) return true;
+      if (deeper ? this.below(c, level + 1, e) : !last || this.inRow(c, e)) return true;
+    }
+    return false;
+  }
+
+  private inRow(c: number, row: number): boolean {
+    const { tree, leaf, none } = this;
+    for (let k = 0; k < tree.samples.turns; k++) {
+      tree.sample(tree.rows!, 3 * this.load.width * row, k, leaf);
+      if (this.reaches(c, leaf, 0, none)) return true;
     }
     return false;
   }
 
   private reaches(c: number, Y: Flat, at: number, radius: Flat): boolean {
-    pairLoad(this.load, this.table.joint[c]!, this.centre, 0, Y, at, this.w);
+    pairLoad(this.load, this.table.joint[c]!, this.centre, 0, Y, at, true, this.w, 0);
     return !(this.bound.both(c, this.w, this.centre, this.spread, Y, at, radius) < this.floor[c]!);
   }
 }

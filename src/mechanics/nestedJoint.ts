@@ -7,6 +7,7 @@ import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
 import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
 import type { PoseValue } from './gridSweepPose.ts';
+import { HarmonicRow } from './harmonicRow.ts';
 import { NestedBound, pairLoad, pairValue } from './nestedBound.ts';
 import type { NestedCase } from './nestedCase.ts';
 import { NestedCells } from './nestedCells.ts';
@@ -21,6 +22,9 @@ export class NestedJoint {
   private readonly cells: NestedCells | null;
   private readonly bound: NestedBound;
   private readonly exact: PoseValue | null;
+  private readonly row: HarmonicRow;
+  private readonly rowParts: Flat;
+  private readonly leaf: Flat;
   private readonly none: Flat;
   /** Checks (slots of the leaders) in two parts: those that the outboard turns leave alone, then those that feel them. */
   private readonly checks: Int32Array;
@@ -34,7 +38,7 @@ export class NestedJoint {
 
   /**
    * `u`: where the inboard vectors will stand; `exact`: values at a pose, where the case leaves something free; `floor` (by check) and
-   * `edge`: for the cells of the sphere, where there are to be any.
+   * `blocks`: for the cells of the sphere, where there are to be any.
    */
   constructor(
     table: FormTable,
@@ -44,7 +48,7 @@ export class NestedJoint {
     u: Flat,
     exact: PoseValue | null,
     floor: Flat | null,
-    edge: number,
+    blocks: number,
   ) {
     this.joint = joint;
     this.table = table;
@@ -59,12 +63,15 @@ export class NestedJoint {
     const feels = (c: number) => load.tool || load.motion !== null || table.feelsMoment[c] === 1;
     this.checks = Int32Array.from([...own.filter((c) => !feels(c)), ...own.filter(feels)]);
     this.alone = own.filter((c) => !feels(c)).length;
-    this.active = new Int32Array((tree.depth + 1) * own.length);
-    this.frames = new Float64Array(tree.frameSize * tree.depth);
-    this.centres = new Float64Array(load.width * tree.depth);
+    this.active = new Int32Array((tree.levels + 2) * own.length);
+    this.frames = new Float64Array(tree.frameSize * (tree.levels + 1));
+    this.centres = new Float64Array(load.width * (tree.levels + 1));
+    this.row = new HarmonicRow(table, load, joint);
+    this.rowParts = new Float64Array(3 * load.width);
+    this.leaf = new Float64Array(load.width);
     // bounds of their own: what a cell asks in between is about another u
     const bound = new NestedBound(table, load);
-    this.cells = floor && edge > 0 ? new NestedCells(load, table, bound, tree, this.checks, floor, edge) : null;
+    this.cells = floor && blocks > 0 ? new NestedCells(load, table, bound, tree, this.checks, floor, blocks) : null;
   }
 
   /** Takes every pose of one inboard choice into account: u at `uAt`, the index of its first pose. */
@@ -77,7 +84,7 @@ export class NestedJoint {
     for (let k = 0; k < checks.length; k++) {
       if (cells && !cells.possible(cell, k)) continue;
       const c = checks[k]!;
-      if (!loaded) pairLoad(load, this.joint, u, uAt, tree.rootCentre, 0, w);
+      if (!loaded) pairLoad(load, this.joint, u, uAt, tree.rootCentre, 0, true, w, 0);
       loaded = true;
       if (k < alone) {
         this.take(c, uAt, tree.rootCentre, 0, index, leaders);
@@ -87,7 +94,9 @@ export class NestedJoint {
       const bound = this.bound.outward(c, w, u, uAt, tree.rootCentre, 0, tree.rootRadius);
       if (!beaten(leaders, c, bound, index)) active[open++] = c;
     }
-    if (open > 0) this.tabulated(0, 0, 0, open, index, leaders);
+    if (open === 0) return;
+    if (tree.levels === 0) this.offerRow(tree.rows!, 0, 0, open, index, leaders);
+    else this.tabulated(0, 0, 0, open, index, leaders);
   }
 
   /** Children of node `parent` of a tabulated level; the checks still open start at `from` in `active`. */
@@ -96,16 +105,12 @@ export class NestedJoint {
     const turns = tree.turns[level]!;
     const centre = tree.centre[level]!;
     const offset = tree.offset[level]!;
-    const end = level === tree.depth - 1;
     for (let e = parent * turns; e < (parent + 1) * turns; e++) {
       const at = index + offset[e]!;
-      if (end) {
-        this.offerAll(centre, load.width * e, from, count, at, leaders);
-        continue;
-      }
       const open = this.stillOpen(level, centre, load.width * e, from, count, at, leaders);
       if (open === 0) continue;
       if (level + 1 < tree.tabulated) this.tabulated(level + 1, e, from + count, open, index, leaders);
+      else if (tree.rows) this.offerRow(tree.rows, 3 * load.width * e, from + count, open, at, leaders);
       else this.deep(level + 1, tree.frames, tree.frameSize * e, from + count, open, at, leaders);
     }
   }
@@ -120,17 +125,17 @@ export class NestedJoint {
     index: number,
     leaders: Leaders,
   ): void {
-    const { tree, load, frames, centres } = this;
-    const end = level === tree.depth - 1;
+    const { tree, load, frames, centres, rowParts } = this;
+    if (level === tree.levels) {
+      tree.row(parent, parentAt, rowParts, 0);
+      this.offerRow(rowParts, 0, from, count, index, leaders);
+      return;
+    }
     const own = tree.frameSize * level;
     const at = load.width * level;
     for (let k = 0; k < tree.turns[level]!; k++) {
       tree.step(level, k, parent, parentAt, frames, own, centres, at);
       const here = index + tree.stepOffset(level, k);
-      if (end) {
-        this.offerAll(centres, at, from, count, here, leaders);
-        continue;
-      }
       const open = this.stillOpen(level, centres, at, from, count, here, leaders);
       if (open > 0) this.deep(level + 1, frames, own, from + count, open, here, leaders);
     }
@@ -147,7 +152,7 @@ export class NestedJoint {
   ): number {
     const { active, tree, w, u, uAt } = this;
     const radius = tree.radius[level]!;
-    pairLoad(this.load, this.joint, u, uAt, Y, at, w);
+    pairLoad(this.load, this.joint, u, uAt, Y, at, true, w, 0);
     let open = 0;
     for (let k = from; k < from + count; k++) {
       const c = active[k]!;
@@ -158,9 +163,26 @@ export class NestedJoint {
     return open;
   }
 
-  private offerAll(Y: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
-    pairLoad(this.load, this.joint, this.u, this.uAt, Y, at, this.w);
-    for (let k = from; k < from + count; k++) this.take(this.active[k]!, this.uAt, Y, at, index, leaders);
+  /** Offers the samples of a row (its parts at `at`) to the checks still open. */
+  private offerRow(parts: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
+    const { row, tree, active, u, uAt } = this;
+    if (this.exact) {
+      this.offerEach(parts, at, from, count, index, leaders);
+      return;
+    }
+    row.set(u, uAt, parts, at);
+    for (let k = from; k < from + count; k++) row.offer(active[k]!, tree.samples, index, leaders);
+  }
+
+  /** The same sample by sample, where a case leaves something free at a pose. */
+  private offerEach(parts: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
+    const { load, tree, leaf, u, uAt, active } = this;
+    for (let k = 0; k < tree.samples.turns; k++) {
+      tree.sample(parts, at, k, leaf);
+      pairLoad(load, this.joint, u, uAt, leaf, 0, true, this.w, 0);
+      const here = index + tree.samples.offset[k]!;
+      for (let a = from; a < from + count; a++) this.take(active[a]!, uAt, leaf, 0, here, leaders);
+    }
   }
 
   /** Offers check c at the pose of u and Y, whose joint load is in `w`. */

@@ -21,9 +21,9 @@ import { NestedJoint } from './nestedJoint.ts';
 import { type Stage, stagesOf } from './nestedStages.ts';
 import { NestedTree } from './nestedTree.ts';
 
-/** Cells along an edge of the cube at most, for one and for two directions; a cell should serve about this many directions. */
-const MOST_EDGE = [0, 32, 6] as const;
-const DIRECTIONS_A_CELL = 8;
+/** Blocks of cells along an edge of the cube at most, for one and for two inboard vectors; a cell should serve so many directions. */
+const MOST_BLOCKS = [0, 32, 2] as const;
+const DIRECTIONS_A_CELL = 16;
 
 export class NestedSweep {
   private readonly chain: Chain;
@@ -32,13 +32,19 @@ export class NestedSweep {
   private readonly table: FormTable;
   private readonly floor: Float64Array | null;
   private readonly exact: PoseValue | null;
+  /** For each joint with checks: blocks of cells along an edge of the cube. -1: no checks. */
+  private readonly cellBlocks: Int32Array;
+  /** Joints as last made, and the outboard samples they were made for: boxes mostly differ inboard. */
+  private readonly made: (NestedJoint | null)[];
+  private readonly madeFor: string[];
+  private readonly tmp = new Float64Array(3);
+  // The box under way.
   private stages: readonly Stage[] = [];
   private inTurns: Int32Array = new Int32Array(0);
-  private u = new Float64Array(0);
+  private u: Float64Array;
   /** The joint that stands first at a stage, where it has checks. */
   private joints: (NestedJoint | null)[] = [];
   private lastStage = -1;
-  private readonly tmp = new Float64Array(3);
 
   /** `floor`: for each check a value that some pose of the grid reaches (less what rounding may do), or null. */
   constructor(
@@ -54,44 +60,77 @@ export class NestedSweep {
     this.table = formTable(checks);
     this.floor = floor;
     this.exact = hasFree(load) ? new PoseValue(chain, load, checks, grid) : null;
+    this.made = new Array(chain.n).fill(null);
+    this.madeFor = new Array(chain.n).fill('');
+    const stages = stagesOf(
+      grid,
+      new Float64Array(chain.n),
+      grid.count.map((count) => count - 1),
+    );
+    this.u = new Float64Array(3 * this.load.pairs * (stages.length + 1));
+    this.cellBlocks = this.countBlocks(stages);
+  }
+
+  private countBlocks(stages: readonly Stage[]): Int32Array {
+    const { chain, load, table } = this;
+    const cellBlocks = new Int32Array(chain.n).fill(-1);
+    const { inTurns } = nestedBalls(chain, load, stages);
+    let directions = 1;
+    stages.forEach((stage, s) => {
+      if (stage.first && table.joint.includes(stage.joint)) {
+        const served = (directions / DIRECTIONS_A_CELL) ** (1 / load.pairs);
+        cellBlocks[stage.joint] = Math.min(MOST_BLOCKS[load.pairs]!, Math.floor(Math.sqrt(served / 96)));
+      }
+      directions *= inTurns[s]!;
+    });
+    return cellBlocks;
   }
 
   /** Takes the poses of a box (first and last sample of each joint) into account. Slots of `leaders` are the checks. */
   run(low: ArrayLike<number>, high: ArrayLike<number>, leaders: Leaders): void {
-    const { chain, grid, load } = this;
+    const { chain, grid, load, table } = this;
     this.stages = stagesOf(grid, low, high);
     const balls = nestedBalls(chain, load, this.stages);
     this.inTurns = balls.inTurns;
-    this.u = new Float64Array(3 * load.pairs * (this.stages.length + 1));
-    let directions = 1;
     this.lastStage = -1;
+    let directions = 1;
     this.joints = this.stages.map((stage, s) => {
-      const joint = stage.first ? this.jointAt(s, balls, directions) : null;
+      const met = directions;
       directions *= balls.inTurns[s]!;
-      if (joint) this.lastStage = s;
-      return joint;
+      if (!stage.first || this.cellBlocks[stage.joint]! < 0) return null;
+      this.lastStage = s;
+      return this.jointAt(s, balls, met, low, high);
     });
     let index = 0;
     for (let j = 0; j < chain.n; j++) index += low[j]! * grid.stride[j]!;
     for (let p = 0; p < load.pairs; p++) rotateBack3(this.u, 3 * p, chain.rotation, 0, load.base, 3 * p);
-    for (let c = 0; c < this.table.checks; c++)
-      if (!feelsLoad(this.table, c)) offer(leaders, c, this.constant(c), index);
+    for (let c = 0; c < table.checks; c++) if (!feelsLoad(table, c)) offer(leaders, c, this.constant(c), index);
     this.inward(0, index, leaders);
+  }
+
+  private jointAt(
+    s: number,
+    balls: NestedBalls,
+    directions: number,
+    low: ArrayLike<number>,
+    high: ArrayLike<number>,
+  ): NestedJoint {
+    const { chain, load, table, stages } = this;
+    const i = stages[s]!.joint;
+    let key = '';
+    for (let j = i; j < chain.n; j++) key += `${low[j]}-${high[j]} `;
+    const known = this.made[i];
+    if (known && this.madeFor[i] === key) return known;
+    const tree = new NestedTree(chain, load, stages, balls, s, directions);
+    const joint = new NestedJoint(table, load, i, tree, this.u, this.exact, this.floor, this.cellBlocks[i]!);
+    this.made[i] = joint;
+    this.madeFor[i] = key;
+    return joint;
   }
 
   /** Value of a check that no load changes. */
   private constant(c: number): number {
     return pairValue(this.table, c, new Float64Array(WRENCH));
-  }
-
-  private jointAt(s: number, balls: NestedBalls, directions: number): NestedJoint | null {
-    const { chain, load, table, stages } = this;
-    const i = stages[s]!.joint;
-    if (!table.joint.includes(i)) return null;
-    const tree = new NestedTree(chain, load, stages, balls, s);
-    const served = (directions / DIRECTIONS_A_CELL) ** (1 / load.pairs);
-    const edge = Math.min(MOST_EDGE[load.pairs]!, Math.floor(Math.sqrt(served / 6)));
-    return new NestedJoint(table, load, i, tree, this.u, this.exact, this.floor, edge);
   }
 
   /** u before stage s stands at 3 pairs s; makes its turns, one after another, and goes outward. */
