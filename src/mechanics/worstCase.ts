@@ -25,14 +25,17 @@ export interface WorstRow {
   readonly gap: number;
 }
 
-/** Boxes that branch and bound looks at in one slice. */
-const SLICE = 400;
+/** Time that one go at a check should take, ms, and the boxes of its first go: how many a box costs depends on the load. */
+const SLICE_MS = 40;
+const FIRST_BOXES = 16;
 
 /** What is under way for one check. */
 interface Task {
   readonly state: CheckState;
   readonly spheres: FreeForceSearch | null;
   branch: BranchBound | null;
+  /** Boxes of the next go. */
+  boxes: number;
   /** Branch and bound can do no more. */
   spent: boolean;
 }
@@ -62,6 +65,7 @@ export class WorstCase {
       state,
       spheres: sets && isHomogeneous(state.check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
       branch: null,
+      boxes: FIRST_BOXES,
       spent: false,
     }));
   }
@@ -96,7 +100,7 @@ export class WorstCase {
       task.branch = new BranchBound(this.chain, this.load, state.check, {
         gap,
         seeds: this.seeds(state),
-        inboard: this.directions(state.check.joint),
+        inboard: (joint, inLink) => this.directions(joint, inLink),
       });
       state.ceiling = Math.max(state.ceiling, task.branch.ceiling);
       this.take(task);
@@ -104,7 +108,10 @@ export class WorstCase {
       while (task.spheres?.open(gap)) task.spheres.round();
       return;
     }
-    task.branch.step(SLICE);
+    const begin = performance.now();
+    task.branch.step(task.boxes);
+    const took = performance.now() - begin;
+    task.boxes = Math.max(1, Math.min(4 * task.boxes, Math.round((task.boxes * SLICE_MS) / Math.max(took, 0.01))));
     this.take(task);
   }
 
@@ -126,9 +133,10 @@ export class WorstCase {
     return near.slice(0, 4).map((other) => other.pose);
   }
 
-  private directions(joint: number): InboardDirections {
-    const known = this.inboard.get(joint) ?? new InboardDirections(this.chain, joint);
-    this.inboard.set(joint, known);
+  private directions(joint: number, inLink: boolean): InboardDirections {
+    const key = 2 * joint + (inLink ? 1 : 0);
+    const known = this.inboard.get(key) ?? new InboardDirections(this.chain, joint, inLink);
+    this.inboard.set(key, known);
     return known;
   }
 
