@@ -11,7 +11,7 @@ import { type FreeWorst, freePart, hasFree, newFreeWorst } from '../mechanics/fr
 import { newPoseLoad, type PoseLoad, poseLoad, poseLoadScratch } from '../mechanics/freeLoadsPose.ts';
 import { looseForms, type QuickScratch, quickScratch, worstAndBound } from './assessFree.ts';
 import { judge, type Scope } from './assessVerdict.ts';
-import type { CheckRow, Wrench } from './results.ts';
+import { type CheckRow, isMissing, type Wrench } from './results.ts';
 
 /** What an arm's parts can take, prepared once for any number of poses and rows. It holds functions: a worker makes its own. */
 export interface ArmCapacity {
@@ -157,11 +157,18 @@ export function rowsWithVerdict(
   });
 }
 
+/** The check that a row is held against, with its rule and notes; null for a pure load row. */
+export function checkOf(checks: readonly CapacityCheck[], row: CheckRow): CapacityCheck | null {
+  return checks.find((check) => key(check) === key(row)) ?? null;
+}
+
 function key(of: Pick<CheckRow, 'jointIndex' | 'bearing' | 'check'>): string {
   return `${of.jointIndex} ${of.bearing} ${of.check}`;
 }
 
 function joined(chain: Chain, row: CheckRow, check: CapacityCheck, options: JoinOptions): CheckRow {
+  // Not looked at: the row says why.
+  if (isMissing(row)) return { ...row, allowable: check.allowable, source: check.source };
   const scope = options.scope ?? (row.bound === null ? 'grid' : 'travel');
   const wrench = canonicalWrench(chain, check.joint, row.wrench);
   const value = check.atPose && !Number.isNaN(row.value) ? check.atPose(wrench, 0) : row.value;

@@ -1,5 +1,12 @@
 /** The engine's one door: what a person asks of an arm. */
 
+export type { ArmCapacity, JoinOptions, PoseAssessment } from './assess.ts';
+export { armCapacity, assessPose, assessRows, checkOf, rowsWithVerdict } from './assess.ts';
+export type { FatigueOptions } from './assessFatigue.ts';
+export { fatigueRows } from './assessFatigue.ts';
+export type { Governing } from './assessGoverning.ts';
+export { governing, overall } from './assessGoverning.ts';
+export type { Scope } from './assessVerdict.ts';
 export type { CompareRatio, CompareResult, LayoutResult, SpanRow } from './compareArm.ts';
 export { compareArm } from './compareArm.ts';
 export type { Arrangement, CompareOptions, ComparePlan, CompareRefusal, Layout } from './comparePlan.ts';
@@ -7,3 +14,4 @@ export { planCompare, SPAN_STEPS } from './comparePlan.ts';
 export type { OutsideTravel } from './poseArm.ts';
 export { freeText, outsideTravel, poseArm } from './poseArm.ts';
 export type * from './results.ts';
+export { isMissing } from './results.ts';

@@ -8,7 +8,7 @@ import { flattenArm, WRENCH } from '../../src/mechanics/chain.ts';
 import { checkValue } from '../../src/mechanics/form.ts';
 import { dynamicLoads, poseScratch, staticLoads } from '../../src/mechanics/newtonEuler.ts';
 import { WorstCase } from '../../src/mechanics/worstCase.ts';
-import { armCapacity, assessPose, assessRows, rowsWithVerdict } from '../../src/studies/assess.ts';
+import { armCapacity, assessPose, assessRows, checkOf, rowsWithVerdict } from '../../src/studies/assess.ts';
 import { REASONS } from '../../src/studies/assessVerdict.ts';
 import { type CheckRow, isMissing } from '../../src/studies/results.ts';
 import { wholeFile } from '../arm/wholeFile.ts';
@@ -190,6 +190,19 @@ describe('verdicts joined to rows', () => {
   it('leave pure load rows alone', () => {
     const load = { ...rowOf('static', 'B', 0), check: 'radial' };
     expect(joined(load)).toEqual(load);
+  });
+
+  it('leave a row that was not looked at with its own reason, and find the check of a row', () => {
+    const row = {
+      ...rowOf('static', 'B', 0),
+      value: Number.NaN,
+      pose: [],
+      verdict: 'unassessed' as const,
+      reason: 'stopped',
+    };
+    expect(joined(row)).toMatchObject({ verdict: 'unassessed', reason: 'stopped', allowable: 1600, utilisation: null });
+    expect(checkOf(capacity.checks, row)!.rule.name).toBe('static equivalent load');
+    expect(checkOf(capacity.checks, { ...row, check: 'radial' })).toBeNull();
   });
 
   it('tell the place on the shaft', () => {

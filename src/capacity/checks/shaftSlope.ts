@@ -19,7 +19,11 @@ export function slopeChecks(parts: PairParts | RingParts): readonly CapacityChec
     const own = 'unassessed' in bearing ? bearing : slopeLimit(bearing.value);
     const target = parts.targets.slope.value;
     const notes = supportNotes(parts);
-    if ('unassessed' in own) return formCheck(name, forms.value, { unassessed: own.unassessed, notes });
+    if ('unassessed' in own) {
+      if (target === null) return formCheck(name, forms.value, { unassessed: own.unassessed, notes });
+      const source = `target of the arm file alone; of the bearing itself nothing is known: ${own.unassessed}`;
+      return formCheck(name, forms.value, { allowable: target, source, notes });
+    }
     const { limit, source } = own.value;
     const byTarget = target !== null && target < limit;
     return formCheck(name, forms.value, {

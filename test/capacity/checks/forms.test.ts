@@ -308,6 +308,17 @@ describe('checks of the shaft', () => {
     expect(loose.source).toContain('Shigley');
   });
 
+  it('holds the slope of a bushing to its clearance, or to the target alone where that is not known', () => {
+    const bush: BearingFile = { kind: 'plain-bushing', bore_mm: 20, outer_mm: 26, width_mm: 20, clearance_um: 30 };
+    const { clearance_um: _, ...bare } = bush;
+    const slope = (left: BearingFile, targets?: ArmFile['targets']) =>
+      listed(oneJoint({ support: CLEVIS, bearings: { left, right: GROOVE }, targets })).of('slope', 'A');
+    expect(slope(bush).allowable).toBeCloseTo(0.0015, 12);
+    expect(slope(bare)).toMatchObject({ allowable: null, unassessed: 'fill in the running clearance of the bushing' });
+    expect(slope(bare, { slope_mrad: 0.8 })).toMatchObject({ allowable: 0.0008, unassessed: null });
+    expect(slope(bare, { slope_mrad: 0.8 }).source).toContain('target of the arm file alone');
+  });
+
   it('comes from hollow to solid as the bore closes', () => {
     const bored = (bore_mm: number) => {
       const { of } = listed(oneJoint({ support: { ...CLEVIS, shaft: { ...CLEVIS.shaft, bore_mm } } }));
