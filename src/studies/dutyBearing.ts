@@ -19,6 +19,7 @@ export const NOTHING = {
   bushing: null,
   unassessed: null,
   notes: [],
+  warnings: [],
 } as const;
 
 export type BearingBody = Omit<DutyBearing, 'joint' | 'jointIndex' | 'side'>;
@@ -41,12 +42,14 @@ export function bearingDuty(
     ...common,
     life: life.value,
     attainedLife: 'value' in attained ? attained.value : null,
-    // Remarks on the load are about the loads found: a wide bound is not what the bearing sees.
-    notes: [
-      ...new Set([...part.notes, ...('value' in attained ? attained.value.notes : []), ...smallArcs(part, runs)]),
-    ],
+    notes: [...new Set([...part.notes, ...life.value.notes])],
+    // About the loads found: a wide bound is not what the bearing sees.
+    warnings: [...('value' in attained ? attained.value.warnings : []), ...smallArcs(part, runs)],
   };
 }
+
+/** Less than this share of the turning in small arcs is not worth a word: bigger swings renew the grease. */
+const SMALL_SHARE = 0.05;
 
 /** The warning of small arcs, with how much of the turning they are. */
 function smallArcs(part: DutyPart, runs: readonly Run[]): readonly string[] {
@@ -64,9 +67,8 @@ function smallArcs(part: DutyPart, runs: readonly Run[]): readonly string[] {
     swept += weight;
     small += weight * share;
   });
-  if (!(small > 0)) return [];
-  const percent = Math.max(1, Math.round((100 * small) / swept));
-  return [`${sentence('small-arc')} (${percent} % of what it turns)`];
+  if (!(small >= SMALL_SHARE * swept && small > 0)) return [];
+  return [`${sentence('small-arc')} (${Math.round((100 * small) / swept)} % of what it turns)`];
 }
 
 function bushingDuty(

@@ -50,7 +50,10 @@ export interface DutyBearing {
   readonly bushing: BushingDuty | null;
   /** Why there is no life (or no PV) and what to fill in. */
   readonly unassessed: string | null;
+  /** What was assumed. */
   readonly notes: readonly string[];
+  /** What a life says little about: small arcs, loads beyond the formula or too small to roll. */
+  readonly warnings: readonly string[];
 }
 
 /** A plain bushing over the duty: of all segments the worst, since each may last until the bushing is warm. */

@@ -3,7 +3,7 @@
  *
  *   - `life` of each rolling bearing, s of duty time at the reliability asked for. More is better: `value` is the life by the loads that
  *     were found, `bound` (where a segment may be anywhere in travel) a life that is reached for certain. Utilisation is the life asked for over
- *     the life that is certain: the share of the bearing that the time asked for wears.
+ *     the life that is certain: the share of the bearing that the time asked for wears. A pass keeps its warnings as its reason.
  *   - `pv` of each bushing, the mean of pressure times sliding speed in the hardest segment, and `speed`, its fastest sliding, where the file
  *     gives a limit.
  *   - `system life` of the arm (`jointIndex` -1): the life that all rolling bearings reach together. Nothing in the file asks for one, so
@@ -12,6 +12,7 @@
  * `pose` and `wrench` are those of the hardest load met in the segment that wears most.
  */
 import type { Arm } from '../arm/arm.ts';
+import { sentence } from '../capacity/rolling/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { type Chain, WRENCH, wrenchToFile } from '../mechanics/chain.ts';
 import { dutyGaps } from './assessDuty.ts';
@@ -109,6 +110,8 @@ function lifeRow(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): Ch
     found === Number.POSITIVE_INFINITY ? (certain === found ? 0 : 1) : found > 0 ? (found - certain) / found : 0;
   const asked = target.value;
   const kind = target.given ? 'arm file' : `default: ${target.source}`;
+  const verdict = judged(share(asked, found), share(asked, certain));
+  const estimated = one.notes.includes(ESTIMATED);
   const reliability = `reliability ${duty.reliability}, a1 ${Number(one.life.a1.toPrecision(3))}`;
   return {
     ...head,
@@ -118,10 +121,13 @@ function lifeRow(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): Ch
     gap: anywhere ? gap : null,
     certified: anywhere ? gap <= CERTIFIED : null,
     allowable: asked,
-    ...judged(share(asked, found), share(asked, certain)),
-    source: `life asked for: ${kind}; ${reliability}${one.notes.map((note) => `; ${note}`).join('')}`,
+    ...verdict,
+    reason: verdict.reason ?? (one.warnings.length > 0 ? one.warnings.join('; ') : null),
+    source: `life asked for: ${kind}; ${reliability}${estimated ? `; ${ESTIMATED}` : ''}`,
   };
 }
+
+const ESTIMATED = sentence('C-estimated');
 
 /** Gap of a life below which it counts as certified: a cube of one per cent of load. */
 const CERTIFIED = 0.03;

@@ -11,6 +11,16 @@ export type { CompareRatio, CompareResult, LayoutResult, SpanRow } from './compa
 export { compareArm } from './compareArm.ts';
 export type { Arrangement, CompareOptions, ComparePlan, CompareRefusal, Layout } from './comparePlan.ts';
 export { planCompare, SPAN_STEPS } from './comparePlan.ts';
+export type { DutyOptions } from './duty.ts';
+export { dutyStudy } from './duty.ts';
+export type { TravelBounds } from './dutyBounds.ts';
+export type * from './dutyResult.ts';
+export { dutyRows, WHOLE_ARM } from './dutyRows.ts';
+export type { JointPlayResult, PlayOptions, PlayResult, TipResult } from './play.ts';
+export { playStudy, tipErrorAt } from './play.ts';
+export type { CasePose, SideMotion } from './playMotion.ts';
+export { playRows } from './playRows.ts';
+export type { JointShare, TipAtPose } from './playTip.ts';
 export type { OutsideTravel } from './poseArm.ts';
 export { freeText, outsideTravel, poseArm } from './poseArm.ts';
 export type * from './results.ts';

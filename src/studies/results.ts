@@ -51,8 +51,9 @@ export type Verdict = 'pass' | 'over' | 'unassessed';
 
 /** One row of a sweep, a worst-pose search or an assessment. */
 export interface CheckRow {
+  /** Name of the joint, or of the arm where `jointIndex` is -1. */
   readonly joint: string;
-  /** Index into the arm file's joints. */
+  /** Index into the arm file's joints; -1: the row speaks for the arm as a whole (`system life`, `tip error`). */
   readonly jointIndex: number;
   readonly bearing: BearingName | null;
   readonly check: string;

@@ -15,7 +15,6 @@ import {
   lifeRevolutions,
   lifeSeconds,
   minimumLoadNotes,
-  type Note,
   type Rule,
   reliabilityFactor,
   sentence,
@@ -47,7 +46,10 @@ export interface BearingLife {
   readonly life: number;
   /** Weibull slope, for the life of all bearings together. */
   readonly slope: number;
+  /** What was assumed. */
   readonly notes: readonly string[];
+  /** Where the formula is stretched: load beyond it, or too little to make the elements roll. */
+  readonly warnings: readonly string[];
 }
 
 /** `loads` N and `turning` rev/s, one a segment; the turning of each already times its share of the time. */
@@ -70,11 +72,8 @@ export function bearingLife(
   if (Number.isNaN(basic)) return { unassessed: 'a load or a rating of the bearing is not a usable number' };
   const C0 = staticRating(bearing);
   const heaviest = Array.from(loads).reduce((most, P, i) => (turning[i]! > 0 ? Math.max(most, P) : most), 0);
-  const notes: Note[] = [
-    ...C.notes,
-    ...lifeNotes(C.value, isUnassessed(C0) ? Number.POSITIVE_INFINITY : C0.value, heaviest),
-    ...minimumLoadNotes(bearing, C.value, load.value),
-  ];
+  const most = isUnassessed(C0) ? Number.POSITIVE_INFINITY : C0.value;
+  const warnings = [...lifeNotes(C.value, most, heaviest), ...minimumLoadNotes(bearing, C.value, load.value)];
   return {
     value: {
       load: load.value,
@@ -84,7 +83,8 @@ export function bearingLife(
       a1: a1.value,
       life: a1.value * basic,
       slope: weibullSlope(bearing.kind),
-      notes: [...new Set(notes)].map(sentence),
+      notes: C.notes.map(sentence),
+      warnings: warnings.map(sentence),
     },
   };
 }

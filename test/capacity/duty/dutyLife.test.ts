@@ -76,8 +76,12 @@ describe('life over a duty', () => {
   });
 
   it('remarks on loads beyond the formula and below the usual minimum', () => {
-    expect(life(10000, [7000], [1]).notes.join()).toContain('above half of C');
-    expect(life(10000, [50], [1]).notes.join()).toContain('below the usual minimum');
+    expect(life(10000, [7000], [1]).warnings.join()).toContain('above half of C');
+    expect(life(10000, [50], [1]).warnings.join()).toContain('below the usual minimum');
+    expect(life(10000, [1000], [1]).warnings).toEqual([]);
     expect(life(10000, [1000], [1]).notes).toEqual([]);
+    const marked = { ...ball(10000), source: 'estimated, replace by the maker’s rating' };
+    const outcome = bearingLife(marked, [1000], [1], 0.9);
+    expect('value' in outcome && outcome.value.notes.join()).toContain('estimated');
   });
 });
