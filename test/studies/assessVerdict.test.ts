@@ -53,6 +53,9 @@ describe('verdict', () => {
       }
       expect(judge({ ...CHECK, allowable: Number.NaN }, 50, 50, scope).verdict).toBe('unassessed');
       expect(judge({ ...CHECK, allowable: -1 }, -2, -2, scope).verdict).toBe('unassessed');
+      // Endless over endless is no number either.
+      const endless = Number.POSITIVE_INFINITY;
+      expect(judge({ ...CHECK, allowable: endless }, endless, endless, scope).verdict).toBe('unassessed');
     }
   });
 
