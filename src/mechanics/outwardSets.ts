@@ -98,6 +98,8 @@ class LevelledLink {
   private readonly cosMiddle: number;
   private readonly sinMiddle: number;
   private readonly cosHalf: number;
+  /** By the sine itself: from the cosine a travel of 1e-8 rad would come out as none. */
+  private readonly sinHalf: number;
   private readonly reach: number;
   /** Of the arc at work. */
   private dx = 0;
@@ -122,7 +124,9 @@ class LevelledLink {
     const middle = 0.5 * (this.from + this.to);
     this.cosMiddle = Math.cos(middle);
     this.sinMiddle = Math.sin(middle);
-    this.cosHalf = this.to - this.from >= 2 * Math.PI ? -2 : Math.cos(0.5 * (this.to - this.from));
+    const half = 0.5 * (this.to - this.from);
+    this.cosHalf = half >= Math.PI ? -2 : Math.cos(half);
+    this.sinHalf = Math.sin(half);
   }
 
   sameAs(other: LevelledLink): boolean {
@@ -172,7 +176,7 @@ class LevelledLink {
     if (along >= size * this.cosHalf) return base + size;
     const across = Math.abs(r * this.cosMiddle - p * this.sinMiddle);
     // The nearer end of the travel, half its width from the middle
-    return base + along * this.cosHalf + across * Math.sqrt(1 - this.cosHalf * this.cosHalf);
+    return base + along * this.cosHalf + across * this.sinHalf;
   }
 
   private table(level: number): SphereTable {
