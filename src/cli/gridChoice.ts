@@ -13,8 +13,8 @@ export interface GridOptions {
   readonly samples?: number;
 }
 
-/** The grid asked for; refused with what would fit where it has too many poses. */
-export function gridChoice(chain: Chain, options: GridOptions): GridChoice {
+/** The grid asked for, and its poses; refused with what would fit where it has too many. */
+export function gridChoice(chain: Chain, options: GridOptions): { choice: GridChoice; poses: number } {
   if (options.step !== undefined && options.samples !== undefined) {
     throw new UsageError('--step and --samples say the same thing twice; give one of them');
   }
@@ -22,5 +22,5 @@ export function gridChoice(chain: Chain, options: GridOptions): GridChoice {
     options.step === undefined ? { samples: options.samples ?? DEFAULT_SAMPLES } : { step: toSI(options.step, '°') };
   const outcome = gridOf(chain, choice);
   if (!outcome.ok) throw new UsageError(gridRefusalText(outcome.refusal));
-  return choice;
+  return { choice, poses: outcome.grid.poses };
 }

@@ -1,11 +1,13 @@
 #!/usr/bin/env node
 /** The command line. Verbs load on demand, so that each starts as fast as what it needs. */
-import { Command, CommanderError, type OptionValues } from 'commander';
+import { Command, CommanderError, Option, type OptionValues } from 'commander';
 import { version } from '../../package.json';
 import { EXIT, type ExitCode, UsageError } from './exit.ts';
-import { angleList } from './optionValues.ts';
+import { angleList, notNegative, positive, wholeNumber } from './optionValues.ts';
 
 const FILE_HELP = 'arm file (*.arm.json), or - for standard input';
+
+const STRICT_HELP = 'exit code 1 also where something could not be assessed against a limit';
 
 const collect = (name: string, before: readonly string[] = []): readonly string[] => [...before, name];
 
@@ -63,7 +65,61 @@ A design aid: results are to be checked by a competent engineer.`,
     'armload pose models/picking-arm.arm.json --at=0,-30,60,0,45 --case carry',
   )
     .requiredOption('--at <angles>', 'joint angles in degrees, from the ground to the tip, such as -10,20', angleList)
-    .option('--case <name>', 'only this load case; may be given again', collect);
+    .option('--case <name>', 'only this load case; may be given again', collect)
+    .option('--strict', STRICT_HELP);
+
+  const overGrid = (command: Command) =>
+    command
+      .option(
+        '--step <degrees>',
+        'largest step of the grid; each travel is divided evenly, both ends included',
+        positive,
+      )
+      .option('--samples <count>', 'samples of each joint in place of a step (default: 9)', wholeNumber(2, 1e6))
+      .option('--case <name>', 'only this load case; may be given again', collect)
+      .option('--workers <count>', 'threads; the result is the same for any number', wholeNumber(1, 64));
+
+  overGrid(
+    verb(
+      'sweep',
+      'The worst load of every bearing over a grid of poses, with its pose and case.',
+      async (file, options) => (await import('./sweep.ts')).sweep(file, options),
+      'armload sweep models/picking-arm.arm.json --step 30\n  armload sweep models/two-link.arm.json --samples 20 --each-case --json',
+    ),
+  )
+    .option('--each-case', 'the worst case by case instead of over all cases')
+    .option('--strict', STRICT_HELP);
+
+  verb(
+    'worst',
+    'The certified worst pose of every check: attained values, and bounds that nothing within travel exceeds.',
+    async (file, options) => (await import('./worst.ts')).worst(file, options),
+    'armload worst models/two-link.arm.json\n  armload worst models/six-joint.arm.json --gap 0.01 --seconds 10',
+  )
+    .option(
+      '--gap <share>',
+      'gap between bound and found to be closed, as a share of the bound (default: 0.001)',
+      positive,
+    )
+    .option('--seconds <time>', 'time allowed; the best so far is kept (default: 30)', positive)
+    .option('--case <name>', 'only this load case; may be given again', collect)
+    .option('--each-case', 'the worst case by case instead of over all cases')
+    .option('--strict', STRICT_HELP)
+    .option('--workers <count>', 'threads', wholeNumber(1, 64));
+
+  overGrid(
+    verb(
+      'compare',
+      'One joint on a clevis and on a cantilever, its link and hub plane as they are.',
+      async (file, options) => (await import('./compare.ts')).compare(file, options as never),
+      'armload compare models/picking-arm.arm.json --joint elbow\n  armload compare models/two-link.arm.json --joint elbow --overhang 20 --cantilever-span 80',
+    ),
+  )
+    .requiredOption('--joint <name>', 'the joint to compare')
+    .option('--clevis-span <mm>', 'distance between the bearings of the clevis (default: as in the file)', positive)
+    .option('--cantilever-span <mm>', 'the same of the cantilever', positive)
+    .option('--overhang <mm>', 'from the hub plane to the near bearing of the cantilever', notNegative)
+    .addOption(new Option('--side <side>', 'side of the cantilever, along the axis or against it').choices(['+', '-']));
 
   verb(
     'check',

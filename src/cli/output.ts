@@ -6,7 +6,7 @@ export const CAUTION =
   "Design aid only: have the results checked by a competent engineer; local codes, makers' ratings and licensed practice decide.";
 
 export function print(text: string): void {
-  process.stdout.write(text.endsWith('\n') ? text : `${text}\n`);
+  process.stdout.write(`${text}\n`);
 }
 
 export function warn(text: string): void {

@@ -1,20 +1,25 @@
 /** `armload pose`: joint loads and bearing loads at one pose. */
 import { bearingLoadTable, jointLoadTable } from '../report/poseTable.ts';
+import { rowsTable } from '../report/rowsTable.ts';
 import { degrees, poseText } from '../report/shown.ts';
+import { armCapacity, assessPose } from '../studies/assess.ts';
 import { outsideTravel, poseArm } from '../studies/poseArm.ts';
-import type { PoseJoint, PoseResult } from '../studies/results.ts';
+import type { CheckRow, PoseJoint, PoseResult } from '../studies/results.ts';
 import { toSI } from '../units/unit.ts';
 import { chooseCases } from './chooseCases.ts';
 import { drawTable } from './drawTable.ts';
 import { EXIT, type ExitCode, UsageError } from './exit.ts';
 import { openArm } from './openArm.ts';
 import { print, printCaution, printJson, warn, warnAll } from './output.ts';
+import { exitOf, rowObject } from './rowObjects.ts';
+import { isJudged } from './shownRows.ts';
 
 export interface PoseOptions {
   /** Degrees. */
   readonly at: readonly number[];
   readonly case?: readonly string[];
   readonly json?: boolean;
+  readonly strict?: boolean;
 }
 
 export async function pose(file: string, options: PoseOptions): Promise<ExitCode> {
@@ -31,14 +36,22 @@ export async function pose(file: string, options: PoseOptions): Promise<ExitCode
   );
   warnAll(warnings);
   const results = poseArm(arm, chain, radians, cases);
-  if (options.json) printJson(arm, { results: results.map(resultObject), warnings });
-  else {
+  const assessed = assessPose(arm, chain, armCapacity(arm, chain), radians, cases);
+  if (options.json) {
+    printJson(arm, { results: results.map((result, k) => resultObject(result, assessed[k]!.rows)), warnings });
+  } else {
     print(`${arm.name}: loads at the pose ${poseText(radians)} °\n`);
-    for (const result of results) print(`${resultText(result)}\n`);
+    results.forEach((result, k) => {
+      print(`${resultText(result, assessed[k]!.rows)}\n`);
+    });
     print("Loads ON the joint and its bearings, in the frame of the joint's housing; moments about the joint origin.");
     printCaution();
   }
-  if (results.every((result) => result.joints.every(computed))) return EXIT.pass;
+  const code = exitOf(
+    assessed.flatMap(({ rows }) => rows),
+    options.strict === true,
+  );
+  if (results.every((result) => result.joints.every(computed))) return code;
   warn('some loads could not be computed');
   return EXIT.over;
 }
@@ -49,23 +62,22 @@ function computed(joint: PoseJoint): boolean {
   return numbers.every(Number.isFinite);
 }
 
-function resultText(result: PoseResult): string {
+function resultText(result: PoseResult, checks: readonly CheckRow[]): string {
+  const judged = checks.filter(isJudged);
   const bearings = bearingLoadTable(result);
+  const free = result.free
+    ? `\nFree: ${result.free}. Joint loads are without it; each bearing load is its own worst over it.`
+    : '';
   return [
-    `Case "${result.case}"`,
-    ...(result.free
-      ? [`Free: ${result.free}. Joint loads are without it; each bearing load is its own worst over it.`]
-      : []),
-    '',
+    `Case "${result.case}"${free}`,
     drawTable(jointLoadTable(result)),
-    ...(bearings.rows.length > 0
-      ? [drawTable(bearings)]
-      : ['No joint has a support, so there are no bearing loads.\n']),
-  ].join('\n');
+    bearings.rows.length > 0 ? drawTable(bearings) : 'No joint has a support, so there are no bearing loads.',
+    ...(judged.length > 0 ? [drawTable(rowsTable(judged, { title: 'Checks', onePose: true, footnotes: true }))] : []),
+  ].join('\n\n');
 }
 
 /** The contract's shape: degrees, newtons, vectors in the housing frame. */
-function resultObject(result: PoseResult): Readonly<Record<string, unknown>> {
+function resultObject(result: PoseResult, checks: readonly CheckRow[]): Readonly<Record<string, unknown>> {
   return {
     case: result.case,
     pose_deg: result.pose.map(degrees),
@@ -86,6 +98,7 @@ function resultObject(result: PoseResult): Readonly<Record<string, unknown>> {
           },
         ]),
       ),
+      checks: checks.filter((row) => row.joint === joint.joint).map(rowObject),
     })),
   };
 }

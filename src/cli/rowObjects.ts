@@ -1,6 +1,6 @@
 /** Check rows in the contract's JSON shape, and the exit code they ask for. */
 import { degrees } from '../report/shown.ts';
-import type { CheckRow } from '../studies/results.ts';
+import { type CheckRow, isMissing } from '../studies/results.ts';
 import { fromSI } from '../units/unit.ts';
 import { EXIT, type ExitCode } from './exit.ts';
 import { warn } from './output.ts';
@@ -15,6 +15,7 @@ export function rowObject(row: CheckRow): Json {
     check: row.check,
     value: row.value,
     unit: row.unit,
+    ...(row.where ? { where: row.where } : {}),
     pose_deg: row.pose.map(degrees),
     case: row.case,
     wrench: { force_N: row.wrench.force, moment_Nm: row.wrench.moment },
@@ -56,7 +57,7 @@ export function jointObjects(rows: readonly CheckRow[]): readonly Json[] {
  * held against a limit at all. A `pass` with a utilisation above 1 or none does not count as one.
  */
 export function exitOf(rows: readonly CheckRow[], strict: boolean): ExitCode {
-  const failed = rows.filter((row) => !Number.isFinite(row.value));
+  const failed = rows.filter((row) => !Number.isFinite(row.value) && !isMissing(row));
   const judged = rows.filter((row) => row.verdict !== null);
   const over = judged.filter(
     (row) => row.verdict === 'over' || (row.verdict === 'pass' && !(row.utilisation !== null && row.utilisation <= 1)),

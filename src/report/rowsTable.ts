@@ -9,6 +9,10 @@ export interface RowsTableOptions {
   readonly system?: UnitSystem;
   /** Each joint's name on its first row only (default); false writes it on every row, as a spreadsheet wants it. */
   readonly group?: boolean;
+  /** The rows are of one case and pose that stand above the table: leaves out their columns, and what every pass of a pose says. */
+  readonly onePose?: boolean;
+  /** Reasons as numbered notes under the table instead of in full on every row. */
+  readonly footnotes?: boolean;
 }
 
 function words(title: string): Column {
@@ -38,13 +42,20 @@ export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions =
   const group = options.group ?? true;
   const bounded = rows.some((row) => row.bound !== null);
   const judged = rows.some((row) => verdictText(row) !== null);
-  const explained = judged && rows.some((row) => row.reason !== null);
+  const onePose = options.onePose ?? false;
+  const reason = (row: CheckRow) => (onePose && row.verdict === 'pass' ? '' : (row.reason ?? ''));
+  const explained = judged && rows.some((row) => reason(row) !== '');
+  const notes = [...new Set(rows.map(reason).filter((text) => text !== ''))];
+  const why = (row: CheckRow) => {
+    const text = reason(row);
+    return options.footnotes && text !== '' ? `${notes.indexOf(text) + 1}` : text;
+  };
   const decimals = valueDecimals(rows, system);
   const columns: Column[] = [
     words('joint'),
     words('bearing'),
     words('check'),
-    { title: bounded ? 'found' : 'worst', unit: null, decimals },
+    { title: bounded ? 'found' : onePose ? 'here' : 'worst', unit: null, decimals },
     ...(bounded ? [{ title: 'bound', unit: null, decimals }] : []),
     words('unit'),
     ...(bounded ? [{ title: 'gap', unit: '%', decimals: 3 }, words('certified')] : []),
@@ -55,9 +66,8 @@ export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions =
           words('verdict'),
         ]
       : []),
-    words('case'),
-    { title: 'pose', unit: '°', decimals: null },
-    ...(explained ? [words('why')] : []),
+    ...(onePose ? [] : [words('case'), { title: 'pose', unit: '°', decimals: null }]),
+    ...(explained ? [words(options.footnotes ? 'note' : 'why')] : []),
   ];
   let last = -1;
   const body = rows.map((row): Cell[] => {
@@ -73,13 +83,20 @@ export function rowsTable(rows: readonly CheckRow[], options: RowsTableOptions =
       ...(bounded ? [value(row.bound)] : []),
       shown.unit,
       ...(bounded
-        ? [row.gap === null ? null : row.gap * 100, row.certified === null ? null : row.certified ? 'yes' : 'no']
+        ? [
+            row.gap === null || row.bound === Number.POSITIVE_INFINITY ? null : row.gap * 100,
+            row.certified === null ? null : row.certified ? 'yes' : 'no',
+          ]
         : []),
       ...(judged ? [value(row.allowable), row.utilisation, verdictText(row)] : []),
-      isMissing(row) ? null : row.case,
-      isMissing(row) ? null : poseText(row.pose),
-      ...(explained ? [row.reason ?? ''] : []),
+      ...(onePose ? [] : isMissing(row) ? [null, null] : [row.case, poseText(row.pose)]),
+      ...(explained ? [why(row)] : []),
     ];
   });
-  return { title: options.title ?? null, columns, rows: body };
+  return {
+    title: options.title ?? null,
+    columns,
+    rows: body,
+    ...(options.footnotes && notes.length > 0 ? { notes } : {}),
+  };
 }

@@ -18,6 +18,8 @@ export interface Table {
   readonly title: string | null;
   readonly columns: readonly Column[];
   readonly rows: readonly (readonly Cell[])[];
+  /** Sentences under the table, to which cells refer by number from 1. */
+  readonly notes?: readonly string[];
 }
 
 export const NOTHING = '–';

@@ -1,0 +1,101 @@
+/** `armload worst`: the certified worst pose of every check. */
+import { secondsText } from '../report/shown.ts';
+import { armCapacity, assessRows } from '../studies/assess.ts';
+import { DEFAULT_GAP, DEFAULT_SECONDS, type WorstResult } from '../studies/worstArm.ts';
+import { runWorst } from '../studies/worstRun.ts';
+import { chooseCases, onlyCases } from './chooseCases.ts';
+import { EXIT, type ExitCode } from './exit.ts';
+import { onInterrupt } from './interrupt.ts';
+import { openArm } from './openArm.ts';
+import { openPool } from './openPool.ts';
+import { print, printCaution, printJson, warn } from './output.ts';
+import { progressBar } from './progressBar.ts';
+import { exitOf, jointObjects } from './rowObjects.ts';
+import { rowTables } from './shownRows.ts';
+
+export interface WorstOptions {
+  readonly gap?: number;
+  readonly seconds?: number;
+  readonly case?: readonly string[];
+  readonly eachCase?: boolean;
+  readonly json?: boolean;
+  readonly strict?: boolean;
+  readonly workers?: number;
+}
+
+const NOTHING_YET: WorstResult = { rows: [], eachCase: [], seconds: 0, certified: false, partial: true };
+
+/** How long a search that was told to stop may take to hand over, ms. */
+const PATIENCE = 1500;
+
+/** What the work gives; or, a while after the signal, null: a part that is slow to stop keeps nobody waiting. */
+async function withPatience<T>(work: Promise<T>, signal: AbortSignal): Promise<T | null> {
+  let timer: ReturnType<typeof setTimeout> | undefined;
+  const late = new Promise<null>((resolve) => {
+    signal.addEventListener('abort', () => {
+      timer = setTimeout(() => resolve(null), PATIENCE);
+    });
+  });
+  return Promise.race([work, late]).finally(() => clearTimeout(timer));
+}
+
+export async function worst(file: string, options: WorstOptions): Promise<ExitCode> {
+  const opened = await openArm(file, options.json === true);
+  const { arm, chain } = onlyCases(opened, chooseCases(opened.arm, options.case));
+  const gap = options.gap ?? DEFAULT_GAP;
+  const seconds = options.seconds ?? DEFAULT_SECONDS;
+  const interrupt = onInterrupt();
+  const bar = progressBar();
+  const pool = openPool(options.workers);
+  const begin = performance.now();
+  let best = NOTHING_YET;
+  const search = runWorst(arm, {
+    pool,
+    gap,
+    seconds,
+    signal: interrupt.signal,
+    onBetter: (better) => {
+      best = better;
+      const closed = better.rows.filter((row) => row.certified).length;
+      const share = Math.min(1, (performance.now() - begin) / (1000 * seconds));
+      bar.show(share, better.rows.length === 0 ? 'first look' : `${closed} of ${better.rows.length} checks certified`);
+    },
+  });
+  const ended = await withPatience(search, interrupt.signal).finally(() => {
+    bar.clear();
+    interrupt.release();
+    pool.close();
+  });
+  const result = ended ?? best;
+  const stopped = interrupt.signal.aborted;
+  const capacity = armCapacity(arm, chain);
+  const rows = assessRows(chain, capacity, options.eachCase ? result.eachCase : result.rows, { gap });
+  if (options.json) {
+    printJson(arm, {
+      gap_asked: gap,
+      certified: result.certified,
+      partial: result.partial || stopped,
+      seconds: result.seconds,
+      joints: jointObjects(rows),
+    });
+  } else {
+    print(`${arm.name}: worst loads within travel, ${caseText(arm.cases.length)}, to a gap of ${gap * 100} %\n`);
+    print(`${rowTables(rows)}\n`);
+    print('found: attained at the pose shown. bound: nothing within travel exceeds it. gap: (bound - found)/bound.');
+    if (stopped) warn('stopped: PARTIAL, the best so far');
+    else if (!result.certified) {
+      const open = result.rows.filter((row) => !row.certified).length;
+      warn(
+        `${open} of ${result.rows.length} gaps are not closed to ${gap * 100} %; give more --seconds or a larger --gap`,
+      );
+    }
+    warn(`searched in ${secondsText(result.seconds)}`);
+    printCaution();
+  }
+  if (result.rows.length === 0) warn('stopped before anything was found');
+  return stopped ? EXIT.interrupted : exitOf(rows, options.strict === true);
+}
+
+function caseText(cases: number): string {
+  return cases === 1 ? '1 case' : `${cases} cases`;
+}
