@@ -11,7 +11,7 @@ import { anyTorque, type DutyPart } from '../capacity/duty/index.ts';
 import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
 import { type CheckForm, checkValue } from '../mechanics/form.ts';
 import { poseScratch, staticLoads } from '../mechanics/newtonEuler.ts';
-import { polish } from '../mechanics/polish.ts';
+import { Polish, type Polished, polish } from '../mechanics/polish.ts';
 import type { TravelBounds } from './dutyBounds.ts';
 import { samplePoses } from './samplePoses.ts';
 
@@ -45,8 +45,7 @@ export function travelLoads(
     let pose: readonly number[] = [];
     let wrench: Float64Array = new Float64Array(WRENCH).fill(Number.NaN);
     part.sizes.forEach((check, s) => {
-      // Any real load will do as one that is found; without the torque's ranges the climb is far quicker.
-      const top = polish(chain, load, anyTorque(check), starts[from + s]!);
+      const top = hardest(chain, load, check, starts[from + s]!);
       const P = part.at(top.wrench, 0);
       if (P <= found) return;
       found = P;
@@ -58,6 +57,24 @@ export function travelLoads(
     return { bound: upper >= found || Number.isNaN(upper) ? upper : found, found, pose, wrench };
   });
 }
+
+/** Arms of more joints than this are not climbed in motion: each pose would cost too much. */
+const CLIMB_IN_MOTION = 8;
+
+/**
+ * A pose that loads a check hard, with a load that occurs there: any will do as one that is found. Without the ranges of the torque the climb
+ * is far quicker. Long arms in motion: the pose that is hardest at rest, with the hardest motion there.
+ */
+function hardest(chain: Chain, load: ChainCase, check: CheckForm, start: Float64Array): Hardest {
+  const anyway = anyTorque(check);
+  if (!load.speed || chain.n <= CLIMB_IN_MOTION) return polish(chain, load, anyway, start);
+  const { pose } = polish(chain, { ...load, speed: null, accel: null }, anyway, start);
+  const moving = new Polish(chain, load, anyway);
+  moving.value(pose);
+  return { pose, wrench: Float64Array.from(moving.worst.wrench) };
+}
+
+type Hardest = Pick<Polished, 'pose' | 'wrench'>;
 
 /** For each check the best of a set of poses, at rest and without what is free. */
 function bestStarts(chain: Chain, load: ChainCase, checks: readonly CheckForm[]): readonly Float64Array[] {
