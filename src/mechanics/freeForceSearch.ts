@@ -12,11 +12,14 @@ import type { GravityMass, OutwardSets } from './outwardSets.ts';
 
 /** Finer tables than this no longer pay: branch and bound takes over. */
 const LAST_LEVEL = 4;
+/** The same for forms of three rows, whose tables cost far more. */
+const LAST_LEVEL_OF_THREE = 1;
 /** Share by which a finer level must better a bound to be followed by a still finer one. */
 const WORTH = 2e-4;
 
 export class FreeForceSearch {
-  private readonly pairs: readonly (readonly [GravityCheck, GravityCheck])[];
+  private readonly pairs: readonly { readonly gravity: GravityCheck; readonly force: GravityCheck; bound: number }[];
+  private readonly last: number;
   private readonly state: CheckState;
   private level = -1;
   private stalled = false;
@@ -27,27 +30,33 @@ export class FreeForceSearch {
     const g = Math.hypot(...chain.gravity);
     const down = g > 0 ? chain.gravity.map((v) => v / g) : [0, 0, -1];
     this.state = state;
-    this.pairs = check.forms.map((f) => [
-      new GravityCheck(weights, check.joint, f, g, down),
-      new GravityCheck(tip, check.joint, f, 1, down),
-    ]);
-    state.ceiling = Math.max(0, ...this.pairs.map(([a, b]) => a.ceiling + b.ceiling));
+    this.pairs = check.forms.map((f) => ({
+      gravity: new GravityCheck(weights, check.joint, f, g, down),
+      force: new GravityCheck(tip, check.joint, f, 1, down),
+      bound: Number.POSITIVE_INFINITY,
+    }));
+    this.last = check.forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;
+    state.ceiling = Math.max(0, ...this.pairs.map(({ gravity, force }) => gravity.ceiling + force.ceiling));
     this.stalled = !Number.isFinite(state.ceiling);
   }
 
   open(gap: number): boolean {
-    return !this.stalled && this.level < LAST_LEVEL && gapOf(this.state) > gap;
+    return !this.stalled && this.level < this.last && gapOf(this.state) > gap;
   }
 
   /** One level finer. */
   round(): void {
     this.level++;
     let most = Number.NEGATIVE_INFINITY;
-    for (const [gravity, force] of this.pairs) {
-      const push = force.cap(this.level, Number.NEGATIVE_INFINITY);
-      const enough = this.state.found - push;
-      const weight = gravity.best(this.level, enough, enough);
-      if (!(weight + push <= most)) most = weight + push;
+    for (const pair of this.pairs) {
+      // A form that stays below what is attained needs no finer look.
+      if (pair.bound > this.state.found) {
+        const push = pair.force.cap(this.level, Number.NEGATIVE_INFINITY);
+        const enough = this.state.found - push;
+        const sum = pair.gravity.best(this.level, enough, enough) + push;
+        if (!(sum >= pair.bound)) pair.bound = sum;
+      }
+      if (!(pair.bound <= most)) most = pair.bound;
     }
     const bound = most + ROUNDING * this.state.ceiling;
     // Level 1 is where the tables begin to speak; a bound that stands still from there on is the pose's fault.

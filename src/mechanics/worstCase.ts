@@ -7,10 +7,10 @@ import { InboardDirections } from './branchBoundInboard.ts';
 import { type Chain, type ChainCase, WRENCH } from './chain.ts';
 import type { CheckForm } from './form.ts';
 import { FreeForceSearch, tipMass } from './freeForceSearch.ts';
-import type { FreePart } from './freeLoads.ts';
+import { type FreePart, freePart } from './freeLoads.ts';
 import { GravityClimb } from './gravityClimb.ts';
 import { gravityLoad } from './gravityLoad.ts';
-import { type CheckState, GravitySearch, gapOf, isHomogeneous, raiseByRounding } from './gravitySearch.ts';
+import { type CheckState, GravitySearch, gapOf, isHomogeneous, ROUNDING, raiseByRounding } from './gravitySearch.ts';
 import { OutwardSets } from './outwardSets.ts';
 import { Polish } from './polish.ts';
 
@@ -29,11 +29,16 @@ export interface WorstRow {
 const SLICE_MS = 40;
 const FIRST_BOXES = 16;
 
+/** Allowable values of checks, in the check's unit. */
+export type Limits = ReadonlyMap<CheckForm, number>;
+
 /** What is under way for one check. */
 interface Task {
   readonly state: CheckState;
   readonly spheres: FreeForceSearch | null;
   branch: BranchBound | null;
+  /** Times it has been worked on. */
+  goes: number;
   /** Boxes of the next go. */
   boxes: number;
   /** Branch and bound can do no more. */
@@ -47,12 +52,22 @@ export class WorstCase {
   private readonly tasks: readonly Task[];
   private readonly states: readonly CheckState[];
   private readonly inboard = new Map<number, InboardDirections>();
-  private turn = 0;
+  private readonly limits: Limits;
 
-  /** `previous`: the search of an earlier layout of the same arm; its outward sets serve again where nothing outboard changed. */
-  constructor(chain: Chain, load: ChainCase, checks: readonly CheckForm[], previous: WorstCase | null = null) {
+  /**
+   * `previous`: the search of an earlier layout of the same arm; its outward sets serve again where nothing outboard changed. `limits`: what
+   * checks are held against, so that work goes first where a verdict is not clear yet.
+   */
+  constructor(
+    chain: Chain,
+    load: ChainCase,
+    checks: readonly CheckForm[],
+    previous: WorstCase | null = null,
+    limits: Limits = new Map(),
+  ) {
     this.chain = chain;
     this.load = load;
+    this.limits = limits;
     const weight = gravityLoad(chain, load);
     const onSphere = weight ? checks.filter(isHomogeneous) : [];
     this.gravity = weight
@@ -65,6 +80,7 @@ export class WorstCase {
       state,
       spheres: sets && isHomogeneous(state.check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
       branch: null,
+      goes: 0,
       boxes: FIRST_BOXES,
       spent: false,
     }));
@@ -81,13 +97,32 @@ export class WorstCase {
       this.gravity.round(gap, due);
       return;
     }
-    for (let k = 0; k < this.tasks.length; k++) {
-      const task = this.tasks[this.turn % this.tasks.length]!;
-      this.turn++;
+    let pick: Task | null = null;
+    for (const task of this.tasks) {
       if (task.spent || gapOf(task.state) <= gap) continue;
-      this.advance(task, gap);
-      return;
+      if (!pick || this.urgency(task) < this.urgency(pick)) pick = task;
     }
+    if (pick) {
+      pick.goes++;
+      this.advance(pick, gap);
+    }
+  }
+
+  /**
+   * What comes first, lowest: checks without a bound, then those whose verdict is open, then loads, last those whose verdict is clear; in turn
+   * within each.
+   */
+  private urgency(task: Task): number {
+    const { state } = task;
+    const limit = this.limits.get(state.check);
+    const rank = !Number.isFinite(state.bound)
+      ? 0
+      : limit === undefined
+        ? 2
+        : state.found <= limit && state.bound > limit
+          ? 1
+          : 3;
+    return rank * 1e9 + task.goes;
   }
 
   rows(): readonly WorstRow[] {
@@ -105,7 +140,11 @@ export class WorstCase {
       state.ceiling = Math.max(state.ceiling, task.branch.ceiling);
       this.take(task);
       if (gapOf(state) <= gap) return;
-      while (task.spheres?.open(gap)) task.spheres.round();
+      if (task.spheres?.open(gap)) task.spheres.round();
+      return;
+    }
+    if (task.spheres?.open(gap)) {
+      task.spheres.round();
       return;
     }
     const begin = performance.now();
@@ -121,7 +160,8 @@ export class WorstCase {
       state.found = branch!.found;
       state.pose.set(branch!.pose);
     }
-    state.bound = Math.min(state.bound, branch!.bound);
+    state.bound = Math.min(state.bound, branch!.bound + ROUNDING * state.ceiling);
+    raiseByRounding(state);
     task.spent = branch!.done;
   }
 
@@ -152,9 +192,10 @@ export class WorstCase {
     if (value >= state.found) {
       state.found = value;
       state.pose.set(pose);
-    }
+    } else at.value(state.pose);
     raiseByRounding(state);
-    return { ...result(state), free: null, wrench: Float64Array.from(at.worst.wrench.subarray(0, WRENCH)) };
+    const wrench = Float64Array.from(at.worst.wrench.subarray(0, WRENCH));
+    return { ...result(state), free: freePart(this.load, at.worst), wrench };
   }
 }
 

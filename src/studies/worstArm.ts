@@ -6,7 +6,7 @@ import type { Arm } from '../arm/arm.ts';
 import { type Chain, flattenArm, WRENCH, wrenchToFile } from '../mechanics/chain.ts';
 import type { CheckForm } from '../mechanics/form.ts';
 import { loadChecks } from '../mechanics/loadChecks.ts';
-import { WorstCase, type WorstRow } from '../mechanics/worstCase.ts';
+import { type Limits, WorstCase, type WorstRow } from '../mechanics/worstCase.ts';
 import type { CheckRow } from './results.ts';
 
 /** What was found in one case, as a worker sends it back. */
@@ -49,12 +49,13 @@ export class CaseSearch {
     checks: readonly CheckForm[],
     gap: number,
     previous: CaseSearch | null = null,
+    limits: Limits = new Map(),
   ) {
     this.arm = arm;
     this.chain = chain;
     this.caseIndex = caseIndex;
     this.gap = gap;
-    this.worst = new WorstCase(chain, chain.cases[caseIndex]!, checks, previous?.worst ?? null);
+    this.worst = new WorstCase(chain, chain.cases[caseIndex]!, checks, previous?.worst ?? null, limits);
   }
 
   get open(): boolean {
@@ -63,7 +64,9 @@ export class CaseSearch {
 
   /** Works until all gaps are closed or `due` says to pause; returns whether work is left. */
   work(due: () => boolean): boolean {
-    while (this.open && !due()) this.worst.step(this.gap, due);
+    // One step at the least, so that whatever was asked for has been begun.
+    do this.worst.step(this.gap, due);
+    while (this.open && !due());
     return this.open;
   }
 

@@ -3,11 +3,12 @@
  * better ones follow; a stop, or the end of the time allowed, keeps the best so far. A pass leaves out what an earlier one closed.
  */
 import type { Arm } from '../arm/arm.ts';
-import { capacityChecks, capacityForms } from '../capacity/index.ts';
+import { type CapacityCheck, capacityChecks, capacityForms } from '../capacity/index.ts';
 import { type Chain, flattenArm } from '../mechanics/chain.ts';
 import type { CheckForm } from '../mechanics/form.ts';
 import { gravityLoad } from '../mechanics/gravityLoad.ts';
 import type { JobKind, JobPool } from '../mechanics/job.ts';
+import type { Limits } from '../mechanics/worstCase.ts';
 import type { CheckRow } from './results.ts';
 import {
   CaseSearch,
@@ -28,8 +29,13 @@ export interface WorstShared {
   readonly end: number;
 }
 
-/** A case, or the checks of one joint of it (chain index), where those share no work with the others. */
-export interface WorstInput {
+/** A case (`joint` null), or the checks of one joint of it (chain index) where those share no work with the others. */
+export interface WorstInput extends Part {
+  /** Time it may take, ms. */
+  readonly budget: number;
+}
+
+interface Part {
   readonly caseIndex: number;
   readonly joint: number | null;
 }
@@ -39,25 +45,37 @@ export function armChecks(arm: Arm, chain: Chain): readonly CheckForm[] {
   return worstChecks(arm, chain, capacityForms(capacityChecks(arm, chain)));
 }
 
-function inputChecks(checks: readonly CheckForm[], input: WorstInput): readonly CheckForm[] {
-  return input.joint === null ? checks : checks.filter((check) => check.joint === input.joint);
+/** What those checks are held against, where it is known. */
+function armLimits(checks: readonly CapacityCheck[]): Limits {
+  const limits = new Map<CheckForm, number>();
+  for (const { form, allowable } of checks) if (form && allowable !== null) limits.set(form, allowable);
+  return limits;
 }
 
 export const worstJob: JobKind<WorstShared, WorstInput, CaseWorst> = {
   name: 'worst',
   start: ({ arm, gap, end }) => {
     const chain = flattenArm(arm);
-    const checks = armChecks(arm, chain);
-    return (input) => {
-      const search = new CaseSearch(arm, chain, input.caseIndex, inputChecks(checks, input), gap);
-      search.work(() => Date.now() > end);
+    const capacity = capacityChecks(arm, chain);
+    const checks = worstChecks(arm, chain, capacityForms(capacity));
+    const limits = armLimits(capacity);
+    return ({ caseIndex, joint, budget }) => {
+      const own = joint === null ? checks : checks.filter((check) => check.joint === joint);
+      const search = new CaseSearch(arm, chain, caseIndex, own, gap, null, limits);
+      const until = Math.min(end, Date.now() + budget);
+      search.work(() => Date.now() > until);
       return search.result();
     };
   },
 };
 
-/** Gaps of the passes before the one asked for. */
-const PASSES = [0.1, 0.02] as const;
+/** Gaps of the passes before the one asked for, and the share of the time by which each must end. */
+const PASSES = [
+  { gap: 0.1, until: 0.2 },
+  { gap: 0.02, until: 0.5 },
+] as const;
+/** Least time of a part, ms: enough for first bounds. */
+const LEAST = 200;
 
 export interface WorstRunOptions {
   readonly pool: JobPool;
@@ -76,17 +94,21 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
   const chain = flattenArm(arm);
   const checks = armChecks(arm, chain);
   const best = new BestRows(chain, checks);
-  const passes = [...PASSES.filter((pass) => pass > 2 * gap), gap];
+  const passes = [...PASSES.filter((pass) => pass.gap > 2 * gap), { gap, until: 1 }];
   let stopped = false;
   const result = () => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end);
   for (const pass of passes) {
-    const inputs = allInputs(chain).filter((input) => !best.closed(input, gap));
+    const inputs = allParts(chain).filter((part) => !best.closed(part, gap));
     if (inputs.length === 0) break;
+    const until = begin + pass.until * (end - begin);
+    // What time is left is shared out evenly as parts are handed out.
+    const budget = (chunk: number) =>
+      Math.max(LEAST, ((until - Date.now()) * options.pool.size) / (inputs.length - chunk));
     const finished = await options.pool.run({
       kind: worstJob,
-      shared: { arm, gap: pass, end },
+      shared: { arm, gap: pass.gap, end },
       chunks: inputs.length,
-      input: (chunk) => inputs[chunk]!,
+      input: (chunk) => ({ ...inputs[chunk]!, budget: budget(chunk) }),
       onOutput: (chunk, output) => best.take(inputs[chunk]!, output),
       onProgress: (done) => options.onBetter?.(result(), done / inputs.length),
       ...(options.signal ? { signal: options.signal } : {}),
@@ -98,7 +120,7 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
 }
 
 /** Long parts first, so that workers end together: cases for branch and bound joint by joint, then the others whole. */
-function allInputs(chain: Chain): readonly WorstInput[] {
+function allParts(chain: Chain): readonly Part[] {
   const whole = chain.cases.flatMap((load, caseIndex) =>
     gravityLoad(chain, load) ? [{ caseIndex, joint: null }] : [],
   );
@@ -118,7 +140,7 @@ class BestRows {
     this.rows = chain.cases.map(() => checks.map(() => null));
   }
 
-  take(input: WorstInput, output: CaseWorst): void {
+  take(input: Part, output: CaseWorst): void {
     this.places(input).forEach((place, k) => {
       const row = output.rows[k]!;
       const before = this.rows[input.caseIndex]![place];
@@ -126,7 +148,7 @@ class BestRows {
     });
   }
 
-  closed(input: WorstInput, gap: number): boolean {
+  closed(input: Part, gap: number): boolean {
     return this.places(input).every((place) => {
       const row = this.rows[input.caseIndex]![place];
       return row?.gap != null && row.gap <= gap;
@@ -150,7 +172,7 @@ class BestRows {
     return { ...done, partial: late && !done.certified };
   }
 
-  private places(input: WorstInput): readonly number[] {
+  private places(input: Part): readonly number[] {
     return this.checks.flatMap((check, place) => (input.joint === null || check.joint === input.joint ? [place] : []));
   }
 }
