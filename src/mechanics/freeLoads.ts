@@ -75,7 +75,8 @@ export function hasFree(load: ChainCase): boolean {
 
 /**
  * Maximum of `check` over the free parts of the case at the pose of `at` (filled by `poseLoad`); the choice and the joint load go to
- * `out`. The value is attained: `dynamicLoads` (or `staticLoads`) with the choice gives it. NaN where the load is not finite.
+ * `out`. The value is attained: `dynamicLoads` (or `staticLoads`) with the choice gives it. NaN where the load is not finite. A value
+ * below `floor` need not be the maximum.
  */
 export function worstOverFree(
   check: CheckForm,
@@ -83,6 +84,7 @@ export function worstOverFree(
   at: PoseLoad,
   out: FreeWorst,
   scratch: FreeScratch,
+  floor = Number.NEGATIVE_INFINITY,
 ): number {
   const i = check.joint;
   out.tipForce.fill(0);
@@ -98,8 +100,8 @@ export function worstOverFree(
     reduceForm(scratch.form, f, i, load, at, 0, 0);
     maximise(check, load, at, out, scratch);
     if (Number.isNaN(out.value)) return out.value;
-    if (f.torqueFrom > Number.NEGATIVE_INFINITY) holdTorque(check, f, load, at, out, scratch, 1, f.torqueFrom);
-    if (f.torqueTo < Number.POSITIVE_INFINITY) holdTorque(check, f, load, at, out, scratch, -1, f.torqueTo);
+    if (f.torqueFrom > Number.NEGATIVE_INFINITY) holdTorque(check, f, load, at, out, scratch, 1, f.torqueFrom, floor);
+    if (f.torqueTo < Number.POSITIVE_INFINITY) holdTorque(check, f, load, at, out, scratch, -1, f.torqueTo, floor);
   }
   return out.value;
 }
@@ -133,7 +135,8 @@ export function freePart(load: ChainCase, worst: FreeWorst): FreePart | null {
 
 /**
  * Where the best of a form lies beyond one end of its torque range, the best within may lie at the end: weigh the torque so
- * (by bisection on the weight) that the best comes to the end, and try what stands on both sides of it.
+ * (by bisection on the weight) that the best comes to the end, and try what stands on both sides of it. With any weight the best is at
+ * least that within the range: done where it is no more than what is found, or below `floor`.
  */
 function holdTorque(
   check: CheckForm,
@@ -144,29 +147,32 @@ function holdTorque(
   scratch: FreeScratch,
   side: 1 | -1,
   limit: number,
+  floor: number,
 ): void {
   const { trial, form } = scratch;
+  let most = Number.POSITIVE_INFINITY;
   const short = (weight: number) => {
     reduceForm(form, f, check.joint, load, at, side * weight, limit);
-    maximise(check, load, at, out, scratch);
+    most = Math.min(most, maximise(check, load, at, out, scratch));
     return side * (trial.wrench[5]! - limit) < 0;
   };
+  const open = () => most > out.value && most >= floor;
   if (!short(0)) return;
   let low = 0;
   let high = 1;
-  for (let k = 0; k < 40 && short(high); k++) {
+  for (let k = 0; k < 40 && open() && short(high); k++) {
     low = high;
     high *= 4;
   }
-  for (let k = 0; k < 50 && high - low > 1e-15 * high; k++) {
+  for (let k = 0; k < 50 && high - low > 1e-15 * high && open(); k++) {
     const middle = (low + high) / 2;
     if (short(middle)) low = middle;
     else high = middle;
   }
 }
 
-/** Best of the reduced form from every start; keeps in `out` the best value of the whole check met on the way. */
-function maximise(check: CheckForm, load: ChainCase, at: PoseLoad, out: FreeWorst, scratch: FreeScratch): void {
+/** Best of the reduced form from every start, returned; keeps in `out` the best value of the whole check met on the way. */
+function maximise(check: CheckForm, load: ChainCase, at: PoseLoad, out: FreeWorst, scratch: FreeScratch): number {
   const { form: p, e } = scratch;
   scratch.trial.value = Number.NaN;
   let best = Number.NEGATIVE_INFINITY;
@@ -184,6 +190,7 @@ function maximise(check: CheckForm, load: ChainCase, at: PoseLoad, out: FreeWors
     }
   } else if (p.rows === 2) startsOnCircle(scratch, from);
   else startsOnSphere(scratch, from);
+  return best;
 }
 
 /** Local maxima of a ring of samples, and one direction of every arc on which the signs of the accelerations stay. */

@@ -5,7 +5,7 @@
 import type { Chain, ChainCase } from './chain.ts';
 import type { CheckForm } from './form.ts';
 import type { Grid } from './gridSweepGrid.ts';
-import { type Leaders, offer } from './gridSweepLeaders.ts';
+import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
 import { PoseValue } from './gridSweepPose.ts';
 
 export class PlainSweep {
@@ -32,8 +32,9 @@ export class PlainSweep {
     for (;;) {
       at.set(index);
       for (let c = 0; c < checks.length; c++) {
-        const value = at.value(c, leaders.best[c]! - leaders.tie[c]!);
-        if (value !== Number.NEGATIVE_INFINITY) offer(leaders, c, value, index);
+        const floor = leaders.best[c]! - leaders.tie[c]!;
+        if (beaten(leaders, c, at.bound(c, floor), index)) continue;
+        offer(leaders, c, at.value(c, floor), index);
       }
       let j = grid.n - 1;
       while (j >= 0 && sample[j] === high[j]) {

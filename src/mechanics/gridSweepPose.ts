@@ -1,6 +1,6 @@
 /** The value of checks at one pose of a grid under a case, the worst over what the case leaves free there. */
 import { type Chain, type ChainCase, WRENCH } from './chain.ts';
-import { type CheckForm, checkValue } from './form.ts';
+import { type CheckForm, checkValue, type Form } from './form.ts';
 import { freeScratch, hasFree, newFreeWorst, worstOverFree } from './freeLoads.ts';
 import { looseBound, reduceForm, support } from './freeLoadsForm.ts';
 import { newPoseLoad, poseLoad, poseLoadScratch } from './freeLoadsPose.ts';
@@ -13,6 +13,9 @@ const CIRCLE = Float64Array.from({ length: 3 * 2 * DIRECTIONS }, (_, k) => {
   const angle = (Math.PI * Math.floor(k / 3)) / DIRECTIONS;
   return k % 3 === 0 ? Math.cos(angle) : k % 3 === 1 ? Math.sin(angle) : 0;
 });
+
+/** Weights of the torque, in the form's own torque factor, that a bound of a form for some torques tries. */
+const WEIGHTS = [0.25, 0.5, 1, 2, 4];
 
 export class PoseValue {
   private readonly chain: Chain;
@@ -50,26 +53,46 @@ export class PoseValue {
     poseLoad(this.chain, this.load, this.pose, this.parts, this.partsScratch);
   }
 
-  /** Worst value of check c at the pose set; -∞ where a cheap bound shows that it cannot reach `floor`. */
-  value(c: number, floor: number): number {
+  /** Worst value of check c at the pose set; below `floor` it need not be the worst. */
+  value(c: number, floor = Number.NEGATIVE_INFINITY): number {
     const check = this.checks[c]!;
     if (!this.free) return checkValue(check, this.parts.fixed, WRENCH * check.joint);
-    if (this.bound(check, floor) < floor) return Number.NEGATIVE_INFINITY;
-    return worstOverFree(check, this.load, this.parts, this.worst, this.scratch);
+    return worstOverFree(check, this.load, this.parts, this.worst, this.scratch, floor);
   }
 
-  /** A bound, no better than it must be to show that the check stays below `floor`. */
-  private bound(check: CheckForm, floor: number): number {
-    const { load, parts } = this;
-    const { form } = this.scratch;
+  /** A bound of that, no better than it must be to show that the check stays below `floor`. */
+  bound(c: number, floor: number): number {
+    if (!this.free) return Number.POSITIVE_INFINITY;
+    const check = this.checks[c]!;
     let bound = Number.NEGATIVE_INFINITY;
     for (const f of check.forms) {
-      reduceForm(form, f, check.joint, load, parts, 0, 0);
-      let own = looseBound(form);
-      if (!(own < floor) && f.rows <= 2) own = this.overDirections(f.rows, own);
+      const own = this.formBound(check, f, floor);
       if (!(own <= bound)) bound = own;
     }
     return bound;
+  }
+
+  private formBound(check: CheckForm, f: Form, floor: number): number {
+    let own = this.weighed(check, f, 0, 0, floor);
+    for (const [side, limit] of [
+      [1, f.torqueFrom],
+      [-1, f.torqueTo],
+    ] as const) {
+      if (own < floor || !Number.isFinite(limit)) continue;
+      // where the form holds, any weight of (torque - limit) may be added to it: try some of the size of its own torque factors
+      let scale = 0;
+      for (let r = 0; r < f.rows; r++) scale = Math.max(scale, Math.abs(f.P[WRENCH * r + 5]!));
+      for (const share of WEIGHTS) own = Math.min(own, this.weighed(check, f, side * share * scale, limit, floor));
+    }
+    return own;
+  }
+
+  /** Bound of a form with `weight` times (torque - `limit`) added. */
+  private weighed(check: CheckForm, f: Form, weight: number, limit: number, floor: number): number {
+    const { form } = this.scratch;
+    reduceForm(form, f, check.joint, this.load, this.parts, weight, limit);
+    const loose = looseBound(form);
+    return loose < floor || f.rows > 2 ? loose : this.overDirections(f.rows, loose);
   }
 
   /** The reduced form over directions e: one row has two, two rows a circle. `start`: another bound. */

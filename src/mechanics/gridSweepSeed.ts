@@ -30,7 +30,7 @@ export function climb(chain: Chain, load: ChainCase, checks: readonly CheckForm[
     let index = governing(leaders, c);
     if (index < 0) continue;
     at.set(index);
-    let best = at.value(c, Number.NEGATIVE_INFINITY);
+    let best = at.value(c);
     for (let pass = 0, moved = true; moved && pass < 4; pass++) {
       moved = false;
       for (let j = 0; j < grid.n; j++) {
@@ -41,6 +41,7 @@ export function climb(chain: Chain, load: ChainCase, checks: readonly CheckForm[
             const sample = Math.floor(index / stride) % count;
             if (sample + way < 0 || sample + way >= count) continue;
             at.set(index + way * stride);
+            if (at.bound(c, best) <= best) continue;
             const value = at.value(c, best);
             if (!(value > best)) continue;
             best = value;

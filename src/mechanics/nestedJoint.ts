@@ -193,6 +193,7 @@ export class NestedJoint {
     if (exact) {
       if (beaten(leaders, c, this.bound.outward(c, w, this.u, uAt, Y, at, this.none), index)) return;
       exact.set(index);
+      if (beaten(leaders, c, exact.bound(c, floor), index)) return;
       value = exact.value(c, floor);
     } else value = pairValue(this.table, c, w);
     if (!(value < floor)) offer(leaders, c, value, index);
