@@ -1,0 +1,75 @@
+/** Each bearing of a joint and its shaft: what it is, how far it is used, which check governs, and what stays open. */
+import type { Bearing, Joint } from '../../arm/arm.ts';
+import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
+import { standing } from '../figures/utilisationScale.ts';
+import type { ArmOnSheet } from '../store/documentStore.ts';
+import { goToWorst } from '../store/goTo.ts';
+import { governed, useGoverning, usePoseRows } from '../store/governing.ts';
+import { showPanel } from '../store/viewStore.ts';
+
+type Part = 'A' | 'B' | 'ring' | null;
+
+export function GoverningLines({ sheet, at }: { sheet: ArmOnSheet; at: number }) {
+  const joint = sheet.arm.joints[at]!;
+  const { support } = joint;
+  if (!support) return null;
+  const parts: readonly Part[] = support.arrangement === 'ring' ? ['ring', null] : ['A', 'B', null];
+  return (
+    <ul className="governing-lines" aria-label={`What governs ${joint.name}`}>
+      {parts.map((part) => (
+        <GoverningLine key={part ?? 'shaft'} sheet={sheet} at={at} part={part} />
+      ))}
+    </ul>
+  );
+}
+
+function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; part: Part }) {
+  const worst = useGoverning(at, part);
+  const now = governed(usePoseRows()).get(`${at} ${part}`);
+  const row = worst?.row;
+  const open = worst?.open ?? [];
+  return (
+    <li>
+      <b>{part === null ? 'Shaft' : part === 'ring' ? 'Ring' : part}</b>
+      <span className="part-size" title={sizeOf(sheet, sheet.arm.joints[at]!, part)}>
+        {sizeOf(sheet, sheet.arm.joints[at]!, part)}
+      </span>
+      <UtilisationBar held={worst ?? null} now={now?.utilisation ?? null} />
+      <span className={`used ${standing(worst)}`}>{utilisationText(worst ?? null)}</span>
+      <span className="why">
+        {row ? (
+          <button type="button" className="go" onClick={() => goToWorst(row)}>
+            {worst.why}
+          </button>
+        ) : (
+          (worst?.why ?? 'not swept yet')
+        )}
+      </span>
+      {open.length > 0 ? (
+        <button type="button" className="go open-count" onClick={() => showPanel('checks')}>
+          {open.length} not assessed
+        </button>
+      ) : (
+        <span />
+      )}
+    </li>
+  );
+}
+
+function sizeOf({ arm }: ArmOnSheet, { support }: Joint, part: Part): string {
+  if (!support) return '';
+  if (part === null) {
+    const { shaft } = support;
+    if (!shaft) return 'no shaft given';
+    const bore = shaft.bore > 0 ? ` / ${mm(shaft.bore)}` : '';
+    return `⌀ ${mm(shaft.diameter)}${bore} ${shaft.material ?? 'no material'}`;
+  }
+  const key = support.arrangement === 'ring' ? support.bearing : part === 'A' ? support.bearingA : support.bearingB;
+  const bearing: Bearing | undefined = key === null ? undefined : arm.bearings[key];
+  if (!bearing) return 'no bearing named';
+  return `${key}, ${mm(bearing.bore)} × ${mm(bearing.outer)} × ${mm(bearing.width)}`;
+}
+
+function mm(metres: number): string {
+  return String(Number((metres * 1000).toFixed(2)));
+}

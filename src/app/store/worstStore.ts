@@ -1,0 +1,86 @@
+/** The worst of every check as it is known now: what the grid found, under the bound that the proof has reached so far. */
+import { create } from 'zustand';
+import { byJoint, rowsWithVerdict } from '../../studies/assess.ts';
+import type { CheckRow } from '../../studies/results.ts';
+import type { WorstResult } from '../../studies/worstArm.ts';
+import { type ArmOnSheet, armOf, presentArm } from './documentStore.ts';
+import { capacityOf } from './engine.ts';
+import { useProof } from './proofStore.ts';
+import type { Swept } from './runs.ts';
+import { useSweep } from './sweepStore.ts';
+
+export interface WorstState {
+  /** Undefined before anything was worked out. */
+  readonly rows: readonly CheckRow[] | undefined;
+}
+
+export const useWorst = create<WorstState>(() => ({ rows: undefined }));
+
+function key(row: CheckRow): string {
+  return `${row.jointIndex} ${row.bearing} ${row.check}`;
+}
+
+/** The higher value found, under the proven bound. A bound that is not a number proves nothing. */
+function joined(found: CheckRow, proven: CheckRow | undefined, gap: number): CheckRow {
+  if (!proven || proven.bound === null || !Number.isFinite(proven.bound) || Number.isNaN(found.value)) return found;
+  if (!(found.value > proven.value)) return Number.isNaN(proven.value) ? found : proven;
+  const bound = Math.max(proven.bound, found.value);
+  const left = bound > 0 ? (bound - found.value) / bound : 0;
+  return { ...found, bound, gap: left, certified: left <= gap };
+}
+
+/** Rows of a sweep joined to those of a proof (of the same arm and cases; either may be missing), each with its verdict. */
+export function worstRows(
+  sheet: ArmOnSheet,
+  sweep: Swept | null,
+  proof: readonly CheckRow[],
+  gap: number,
+): readonly CheckRow[] {
+  const capacity = capacityOf(sheet.arm, sheet.chain);
+  const proven = new Map(proof.map((row) => [key(row), row]));
+  const rows = sweep ? sweep.rows.map((row) => joined(row, proven.get(key(row)), gap)) : proof;
+  const judged = rows.flatMap((row) =>
+    rowsWithVerdict(
+      sheet.chain,
+      [row],
+      capacity.checks,
+      row.bound === null && sweep?.partial ? { scope: 'part of the grid' } : { gap },
+    ),
+  );
+  const leftOut = sweep?.leftOut.map((row) => {
+    const instead = proven.get(key(row));
+    return instead && !Number.isNaN(instead.value)
+      ? rowsWithVerdict(sheet.chain, [instead], capacity.checks, { gap })[0]!
+      : row;
+  });
+  return byJoint([...judged, ...(leftOut ?? []), ...capacity.missing]);
+}
+
+/** The rows of a proof for one case, or over all. */
+function proofRows(proof: WorstResult, name: string | null): readonly CheckRow[] {
+  return name === null ? proof.rows : proof.eachCase.filter((row) => row.case === name);
+}
+
+/** Keeps the rows in step with the sweep and the proof. */
+export function followWorst(): void {
+  const update = () => {
+    const sweep = useSweep.getState();
+    const proof = useProof.getState();
+    // The newer of two arms: while one is being dragged a sweep is ahead of the proof, after an edit the proof may be there first.
+    const present = presentArm()?.file;
+    const of = proof.best && proof.of === present && sweep.of !== present ? proof.of : sweep.of;
+    if (!of) {
+      useWorst.setState({ rows: undefined });
+      return;
+    }
+    const swept = sweep.of === of ? sweep.result : null;
+    const proven = proof.best && proof.of === of ? proofRows(proof.best, swept ? sweep.ofCase : sweep.case) : [];
+    useWorst.setState({ rows: worstRows(armOf(of), swept, proven, proof.gap) });
+  };
+  useSweep.subscribe((state, before) => {
+    if (state.result !== before.result) update();
+  });
+  useProof.subscribe((state, before) => {
+    if (state.best !== before.best) update();
+  });
+}
