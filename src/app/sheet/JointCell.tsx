@@ -4,6 +4,7 @@ import type { CheckRow } from '../../studies/results.ts';
 import { SHOWN_UNITS } from '../../units/format.ts';
 import { JointSection } from '../figures/JointSection.tsx';
 import { type SectionShape, sectionShape } from '../figures/sectionGeometry.ts';
+import { THUMB } from '../figures/thumbnail.ts';
 import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
 import { standingFill } from '../figures/utilisationScale.ts';
 import type { ArmOnSheet } from '../store/documentStore.ts';
@@ -13,7 +14,6 @@ import { setAngle, usePose } from '../store/poseStore.ts';
 import { rowOf } from '../store/sweepStore.ts';
 import { useTone } from '../store/tone.ts';
 import { selectJoint, useView } from '../store/viewStore.ts';
-import { THUMB } from './LoadPath.tsx';
 import { QuantityField } from './QuantityField.tsx';
 import { shownNumber } from './shownNumber.ts';
 

@@ -1,15 +1,13 @@
 /** The way of the load from the tip, joint by joint, into the ground: which joint is in trouble, at one glance. */
 import { Fragment } from 'react';
-import type { JointFile } from '../../arm/armFile.ts';
 import { MomentBand } from '../figures/MomentBand.tsx';
 import { sectionShape } from '../figures/sectionGeometry.ts';
+import { THUMB } from '../figures/thumbnail.ts';
 import { type ArmOnSheet, useArm } from '../store/documentStore.ts';
 import { rowOf } from '../store/sweepStore.ts';
 import { useWorst } from '../store/worstStore.ts';
 import { JointCell } from './JointCell.tsx';
 import { GroundCell, TipCell } from './PathEnds.tsx';
-
-export const THUMB = { width: 132, height: 74 } as const;
 
 export function LoadPath() {
   const sheet = useArm();
@@ -50,9 +48,4 @@ function commonScale({ arm }: ArmOnSheet): number {
     scale = Math.min(scale, across, up);
   }
   return scale;
-}
-
-export function arrangementOf(joint: JointFile): string {
-  if (joint.kind !== 'revolute') return 'fixed';
-  return joint.support?.arrangement ?? 'no support';
 }
