@@ -10,10 +10,12 @@
  *
  *     a_b = Σ_j α_j D_jb + Σ_{j≤k} c ω_j ω_k D_kb,      c = 1 for j = k, else 2          (`../mechanics/freeLoadsPose.ts`)
  *
- * so its mass adds a force m_b a_b of unknown direction there, and its inertia I about the centre a moment of at most I (|ω̇| + |ω|²). Own
- * derivation; held against random poses and motions.
+ * so its mass adds a force m_b a_b there, and its inertia I about the centre a moment of at most I (|ω̇| + |ω|²). Every term of a_b stands
+ * across its axis j, so along the axis of the joint looked at it has at most the sine of the angle between the two: none where they are
+ * parallel. Force along and across the axis are bounded each by itself. Own derivation; held against random poses and motions.
  */
 import { type Chain, type ChainCase, INERTIA, WRENCH } from '../mechanics/chain.ts';
+import { DirectionValue } from '../mechanics/directionValue.ts';
 import type { CheckForm, Form } from '../mechanics/form.ts';
 import { GravityCheck } from '../mechanics/gravityCheck.ts';
 import { GravityClimb } from '../mechanics/gravityClimb.ts';
@@ -44,7 +46,7 @@ export const sphereBounds: TravelBounds = (chain, load, checks) => {
   for (let round = 0; round < ROUNDS && search.open(GAP); round++) search.round(GAP);
   const others = whole ? [] : otherForces(chain, load);
   return checks.map((check, k) => {
-    const extra = others.length === 0 ? 0 : Math.max(...check.forms.map((f) => mostOf(check.joint, f, others)));
+    const extra = others.length === 0 ? 0 : Math.max(...check.forms.map((f) => mostOf(chain, check.joint, f, others)));
     const constant = Math.max(...check.forms.map((f) => Math.hypot(...f.c) + f.o));
     const bound = search.entries[k]!.bound + extra + Math.max(0, constant);
     return bound > 0 ? bound * OUTWARD : bound;
@@ -55,12 +57,15 @@ function homogeneous(f: Form): Form {
   return { ...f, c: new Float64Array(f.rows), o: 0 };
 }
 
-/** A force of at most `force` N, of any direction, at a point of link `link`, and a moment of at most `moment` N·m on it. */
+/** A force and a moment on link `link` whose direction is not known. */
 interface OtherForce {
   readonly link: number;
+  /** N, at most, by the joint whose axis it stands across; null: it may point anywhere. */
+  readonly across: Float64Array | null;
+  /** N and N·m, at most. */
   readonly force: number;
   readonly moment: number;
-  /** Outward sets of a unit mass at the point. */
+  /** Outward sets of a unit mass at the point where the force acts. */
   readonly sets: OutwardSets;
 }
 
@@ -68,7 +73,7 @@ function otherForces(chain: Chain, load: ChainCase): readonly OtherForce[] {
   const list: OtherForce[] = [];
   if (load.force !== 'none') {
     const sets = pointSets(chain, chain.n - 1, chain.tipOrigin);
-    list.push({ link: chain.n - 1, force: load.magnitude, moment: 0, sets });
+    list.push({ link: chain.n - 1, across: null, force: load.magnitude, moment: 0, sets });
   }
   const { speed, accel } = load;
   if (!speed || !accel) return list;
@@ -81,15 +86,39 @@ function otherForces(chain: Chain, load: ChainCase): readonly OtherForce[] {
     const centre = Float64Array.from({ length: 3 }, (_, k) => (mass > 0 ? load.first[3 * b + k]! / mass : 0));
     const sets = pointSets(chain, b, centre);
     const D = Float64Array.from({ length: b + 1 }, (_, j) => (mass > 0 ? offAxis(sets, j) : 0));
-    let a = 0;
-    for (let k = 0; k <= b; k++) {
-      let turning = speed[k]! * speed[k]!;
-      for (let j = 0; j < k; j++) turning += 2 * speed[j]! * speed[k]!;
-      a += (accel[k]! + turning) * D[k]!;
-    }
-    list.push({ link: b, force: mass * a, moment: largestInertia(load, b, centre) * (A + W * W), sets });
+    const across = Float64Array.from({ length: b + 1 }, (_, j) => {
+      let turning = speed[j]! * D[j]!;
+      for (let k = j + 1; k <= b; k++) turning += 2 * speed[k]! * D[k]!;
+      return mass * (accel[j]! * D[j]! + speed[j]! * turning);
+    });
+    const force = across.reduce((sum, part) => sum + part, 0);
+    list.push({ link: b, across, force, moment: largestInertia(load, b, centre) * (A + W * W), sets });
   }
   return list;
+}
+
+/** Axes nearer than this sine are parallel. */
+const PARALLEL = 1e-12;
+
+/** Most that the sine of the angle between the axis of joint i and each other axis can be. [n] */
+function axisSines(chain: Chain, i: number): Float64Array {
+  const sines = new Float64Array(chain.n).fill(1);
+  sines[i] = 0;
+  // Past axes that are parallel to this one the angle to the next does not change.
+  for (let k = i + 1; k < chain.n; k++) {
+    sines[k] = sineBefore(chain, k);
+    if (sines[k]! > PARALLEL) break;
+  }
+  for (let k = i - 1; k >= 0; k--) {
+    sines[k] = sineBefore(chain, k + 1);
+    if (sines[k]! > PARALLEL) break;
+  }
+  return sines;
+}
+
+/** Sine of the angle between the axes of joint k and of the joint before it: the z axis of the one seen from the other. */
+function sineBefore(chain: Chain, k: number): number {
+  return Math.min(1, Math.hypot(chain.rotation[9 * k + 2]!, chain.rotation[9 * k + 5]!));
 }
 
 export function pointSets(chain: Chain, link: number, point: Float64Array): OutwardSets {
@@ -120,14 +149,35 @@ function largestInertia(load: ChainCase, b: number, centre: Float64Array): numbe
 }
 
 /** Most that the other forces add to a form of a joint. */
-function mostOf(joint: number, f: Form, others: readonly OtherForce[]): number {
+function mostOf(chain: Chain, joint: number, f: Form, others: readonly OtherForce[]): number {
+  const bare = homogeneous(f);
+  const sines = axisSines(chain, joint);
   let sum = 0;
-  for (const { link, force, moment, sets } of others) {
+  for (const { link, across, force, moment, sets } of others) {
     if (link < joint) continue;
     if (moment > 0) sum += moment * momentNorm(f);
-    if (force > 0) sum += new GravityCheck(sets, joint, homogeneous(f), force, [0, 0, 1]).cap(LEVEL, 0);
+    if (!(force > 0)) continue;
+    const anyWay = new GravityCheck(sets, joint, bare, force, [0, 0, 1]).cap(LEVEL, 0);
+    sum += across ? Math.min(anyWay, splitMost(sets, joint, bare, force, weighed(across, sines))) : anyWay;
   }
   return sum;
+}
+
+function weighed(across: Float64Array, sines: Float64Array): number {
+  return across.reduce((sum, part, j) => sum + part * sines[j]!, 0);
+}
+
+/** Most of a form by a force of at most `across` N across the joint's axis and `along` N along it. */
+function splitMost(sets: OutwardSets, joint: number, f: Form, across: number, along: number): number {
+  const value = new DirectionValue(sets, joint, f, 1);
+  let flat = 0;
+  for (let k = 0; k < AROUND; k++) {
+    const angle = (2 * Math.PI * k) / AROUND;
+    const way = value.of(Math.cos(angle), Math.sin(angle), 0, LEVEL, flat);
+    if (!(way <= flat)) flat = way;
+  }
+  const axial = along > 0 ? Math.max(value.of(0, 0, 1, LEVEL, 0), value.of(0, 0, -1, LEVEL, 0), 0) : 0;
+  return (across * flat) / Math.cos(Math.PI / AROUND) + along * axial;
 }
 
 /** Largest of ‖P m‖ + |l·m| over unit moments m. */

@@ -1,15 +1,18 @@
 import { describe, expect, it } from 'vitest';
 import type { Arm, LoadCase } from '../../src/arm/arm.ts';
+import type { ArmFile } from '../../src/arm/armFile.ts';
 import { anyTorque, type DutyPart, dutyPart } from '../../src/capacity/duty/index.ts';
 import { jointParts } from '../../src/capacity/index.ts';
 import { bareBearing } from '../../src/capacity/rolling/index.ts';
 import { seededRandom } from '../../src/math/random.ts';
 import { flattenArm, WRENCH } from '../../src/mechanics/chain.ts';
 import { checkValue } from '../../src/mechanics/form.ts';
+import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { dynamicLoads, poseScratch } from '../../src/mechanics/newtonEuler.ts';
 import { sphereBounds } from '../../src/studies/dutyBounds.ts';
 import { travelLoads } from '../../src/studies/dutyTravel.ts';
 import { randomArm } from '../randomArm.ts';
+import { armOf } from './smallArms.ts';
 
 const ball = { ...bareBearing('deep-groove', 0.02, 0.042, 0.012), C: 9400, C0: 5000 };
 const angular = { ...bareBearing('angular-contact', 0.02, 0.042, 0.012, Math.PI / 12), C: 10000, C0: 6000 };
@@ -81,7 +84,14 @@ describe('bounds over the travel', () => {
     let tightest = 0;
     for (let seed = 1; seed <= 36; seed++) {
       const kind = KINDS[seed % KINDS.length]!;
-      const arm = withBearings(randomArm(seed, { joints: 1 + (seed % 5), drives: seed % 4 === 0, ...kind }));
+      const arm = withBearings(
+        randomArm(seed, {
+          joints: 1 + (seed % 5),
+          drives: seed % 4 === 0,
+          parallel: seed % 5 === 0 ? 0.8 : 0.15,
+          ...kind,
+        }),
+      );
       const { parts, chain } = partsOf(arm);
       const load = chain.cases[0]!;
       const checks = parts.flatMap((part) => part.sizes);
@@ -116,6 +126,53 @@ describe('bounds over the travel', () => {
         expect(found).toBeGreaterThan(0.5 * bound);
       }
     }
+  });
+});
+
+describe('bounds of motion by hand', () => {
+  it('two links stretched out at full speed: m (ω1² (L1 + L2) + 2 ω1 ω2 L2 + ω2² L2), met but for the polygon (0.5 %)', () => {
+    const [m, L1, L2, w1, w2] = [3, 0.4, 0.3, 5, 7];
+    const joint = (name: string, x: number): ArmFile['joints'][number] => ({
+      name,
+      kind: 'revolute',
+      origin_mm: [1000 * x, 0, 0],
+      axis: [0, 0, 1],
+      travel_deg: [-90, 90],
+      link: {
+        name: `${name} link`,
+        mass_kg: 0,
+        centre_mm: [0, 0, 0],
+        inertia_kg_m2: { xx: 0, yy: 0, zz: 0, xy: 0, xz: 0, yz: 0 },
+      },
+      support: { arrangement: 'clevis', hub_mm: 0, span_mm: 100, thrust: 'A' },
+    });
+    const arm = armOf({
+      armload: 1,
+      name: 'two links',
+      gravity_m_s2: [0, 0, 0],
+      joints: [joint('first', 0), joint('second', L1)],
+      tip: { origin_mm: [1000 * L2, 0, 0] },
+      cases: [
+        {
+          name: 'spin',
+          payload: { mass_kg: m, centre_mm: [0, 0, 0] },
+          motion: { speed_deg_s: [w1, w2].map((w) => (w * 180) / Math.PI), accel_deg_s2: [0, 0] },
+        },
+      ],
+    });
+    const chain = flattenArm(arm);
+    const checks = loadChecks(arm, chain).filter((check) => check.check === 'radial' && check.joint === 0);
+    const force = m * (w1 * w1 * (L1 + L2) + 2 * w1 * w2 * L2 + w2 * w2 * L2);
+    const bounds = sphereBounds(chain, chain.cases[0]!, checks);
+    expect(bounds.length).toBe(2);
+    for (const bound of bounds) {
+      expect(bound / (force / 2)).toBeGreaterThanOrEqual(1 - 1e-9);
+      expect(bound / (force / 2)).toBeLessThan(1.02);
+    }
+    const w = new Float64Array(WRENCH * 2);
+    const rates = { speed: [w1, w2], accel: [0, 0] };
+    dynamicLoads(chain, chain.cases[0]!, [0, 0], rates, w, poseScratch(2));
+    expect(checkValue(checks[0]!, w, 0) / (force / 2)).toBeCloseTo(1, 9);
   });
 });
 
