@@ -1,1 +1,4 @@
-export {};
+/** Benchmarks: each file of this folder prints its own lines. */
+import { dutyLines } from './duty.ts';
+
+for (const line of dutyLines()) console.log(line);
