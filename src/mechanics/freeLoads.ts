@@ -98,6 +98,8 @@ export function worstOverFree(
   }
   for (const f of check.forms) {
     reduceForm(scratch.form, f, i, load, at, 0, 0);
+    // an earlier form gives more than this one can
+    if (looseBound(scratch.form) < out.value) continue;
     maximise(check, load, at, out, scratch);
     if (Number.isNaN(out.value)) return out.value;
     if (f.torqueFrom > Number.NEGATIVE_INFINITY) holdTorque(check, f, load, at, out, scratch, 1, f.torqueFrom, floor);

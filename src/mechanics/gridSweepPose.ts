@@ -2,17 +2,65 @@
 import { type Chain, type ChainCase, WRENCH } from './chain.ts';
 import { type CheckForm, checkValue, type Form } from './form.ts';
 import { freeScratch, hasFree, newFreeWorst, worstOverFree } from './freeLoads.ts';
-import { looseBound, reduceForm, support } from './freeLoadsForm.ts';
-import { newPoseLoad, poseLoad, poseLoadScratch } from './freeLoadsPose.ts';
+import { LIN, looseBound, PART, type ReducedForm, reduceForm, support } from './freeLoadsForm.ts';
+import { newPoseLoad, pairCount, poseLoad, poseLoadScratch } from './freeLoadsPose.ts';
 import { type Grid, poseAt } from './gridSweepGrid.ts';
 
-/** Directions of a half circle; between two of them a convex support is at most 1/cos(π/2/12) of the larger end. */
-const DIRECTIONS = 12;
-const BETWEEN = (1 + 1e-12) / Math.cos(Math.PI / 2 / DIRECTIONS);
-const CIRCLE = Float64Array.from({ length: 3 * 2 * DIRECTIONS }, (_, k) => {
-  const angle = (Math.PI * Math.floor(k / 3)) / DIRECTIONS;
-  return k % 3 === 0 ? Math.cos(angle) : k % 3 === 1 ? Math.sin(angle) : 0;
-});
+/**
+ * Directions among which every unit vector e of so many components is a sum of neighbours with weights that add up to `between` at most.
+ * The best of e · y + line over the free parts is then at most `between` times its largest value among them (or 0), plus what the line
+ * can lack: (between - 1) of its size.
+ */
+interface Directions {
+  readonly count: number;
+  /** [3 count] */
+  readonly e: Float64Array;
+  readonly between: number;
+}
+
+const CIRCLE = 24;
+/** Squares along an edge of the cube whose corners are the directions of the sphere. */
+const CUBE = 6;
+
+function circle(): Directions {
+  const e = Float64Array.from({ length: 3 * CIRCLE }, (_, k) => {
+    const angle = (2 * Math.PI * Math.floor(k / 3)) / CIRCLE;
+    return k % 3 === 0 ? Math.cos(angle) : k % 3 === 1 ? Math.sin(angle) : 0;
+  });
+  return { count: CIRCLE, e, between: (1 + 1e-12) / Math.cos(Math.PI / CIRCLE) };
+}
+
+function sphere(): Directions {
+  const found: number[] = [];
+  let nearest = 1;
+  for (let face = 0; face < 6; face++) {
+    const corner = (i: number, j: number): number[] => {
+      const v = [face & 1 ? -1 : 1, (2 * i) / CUBE - 1, (2 * j) / CUBE - 1];
+      const size = Math.hypot(...v);
+      return [0, 1, 2].map((k) => v[(k + 3 - (face >> 1)) % 3]! / size);
+    };
+    for (let i = 0; i <= CUBE; i++) {
+      for (let j = 0; j <= CUBE; j++) {
+        found.push(...corner(i, j));
+        if (i === CUBE || j === CUBE) continue;
+        nearest = Math.min(nearest, planeOf(corner(i, j), corner(i + 1, j), corner(i + 1, j + 1)));
+        nearest = Math.min(nearest, planeOf(corner(i, j), corner(i, j + 1), corner(i + 1, j + 1)));
+      }
+    }
+  }
+  return { count: found.length / 3, e: Float64Array.from(found), between: (1 + 1e-12) / nearest };
+}
+
+/** Distance from the centre to the plane through three points of the sphere. */
+function planeOf(a: readonly number[], b: readonly number[], c: readonly number[]): number {
+  const p = b.map((value, k) => value - a[k]!);
+  const q = c.map((value, k) => value - a[k]!);
+  const n = [0, 1, 2].map((k) => p[(k + 1) % 3]! * q[(k + 2) % 3]! - p[(k + 2) % 3]! * q[(k + 1) % 3]!);
+  return Math.abs(n[0]! * a[0]! + n[1]! * a[1]! + n[2]! * a[2]!) / Math.hypot(...n);
+}
+
+const LINE: Directions = { count: 2, e: Float64Array.of(1, 0, 0, -1, 0, 0), between: 1 + 1e-12 };
+const BY_ROWS = [LINE, LINE, circle(), sphere()] as const;
 
 /** Weights of the torque, in the form's own torque factor, that a bound of a form for some torques tries. */
 const WEIGHTS = [0.25, 0.5, 1, 2, 4];
@@ -92,27 +140,32 @@ export class PoseValue {
     const { form } = this.scratch;
     reduceForm(form, f, check.joint, this.load, this.parts, weight, limit);
     const loose = looseBound(form);
-    return loose < floor || f.rows > 2 ? loose : this.overDirections(f.rows, loose);
+    return loose < floor ? loose : this.overDirections(f.rows, loose);
   }
 
-  /** The reduced form over directions e: one row has two, two rows a circle. `start`: another bound. */
+  /** The reduced form over directions e of as many components as it has rows. `start`: another bound. */
   private overDirections(rows: number, start: number): number {
     const { e } = this;
     const { form } = this.scratch;
-    if (rows === 1) {
-      e[0] = 1;
-      e[1] = 0;
-      const there = support(form, e);
-      e[0] = -1;
-      return Math.min(start, Math.max(there, support(form, e)) + 1e-12 * Math.abs(start));
-    }
+    const { count, e: all, between } = BY_ROWS[rows]!;
     let most = 0;
-    for (let k = 0; k < 2 * DIRECTIONS; k++) {
-      e[0] = CIRCLE[3 * k]!;
-      e[1] = CIRCLE[3 * k + 1]!;
+    for (let k = 0; k < count; k++) {
+      e[0] = all[3 * k]!;
+      e[1] = all[3 * k + 1]!;
+      e[2] = all[3 * k + 2]!;
       const value = support(form, e);
       if (!(value <= most)) most = value;
     }
-    return Math.min(start, most * BETWEEN);
+    return Math.min(start, most * between + (between - 1) * lineSize(form));
   }
+}
+
+/** Most that the linear part of a reduced form can be, either way. */
+function lineSize(form: ReducedForm): number {
+  let size = Math.abs(form.fixed[LIN]!);
+  if (form.hasTip) size += Math.hypot(form.tip[9]!, form.tip[10]!, form.tip[11]!);
+  if (!form.hasMotion) return size;
+  for (let j = 0; j < form.n; j++) size += Math.abs(form.accel[PART * j + LIN]!);
+  for (let k = 0; k < pairCount(form.n); k++) size += Math.abs(form.rate[PART * k + LIN]!);
+  return size;
 }
