@@ -22,6 +22,9 @@ interface SweepJson {
   }[];
 }
 
+/** The machine of a test may have more to do. */
+const PATIENT = { timeout: 30_000 };
+
 let open: OpenPage;
 let page: Page;
 
@@ -35,8 +38,8 @@ afterAll(() => open?.close());
 const status = () => page.getByRole('status');
 const swept = () =>
   status()
-    .filter({ hasText: /poses in/ })
-    .waitFor({ timeout: 60_000 });
+    .filter({ hasText: /poses, [\d.]+ s/ })
+    .waitFor({ timeout: 150_000 });
 const nowOf = (joint: string, what: string): Locator => page.locator(`[data-check="${joint}/${what}"]`);
 
 async function numberIn(cell: Locator): Promise<number> {
@@ -77,7 +80,7 @@ describe('a journey over the sheet', () => {
   test('it opens on the picking arm, already swept, with no error', async () => {
     await swept();
     await expect(page.getByRole('textbox', { name: 'Title' }).inputValue()).resolves.toBe('Glasshouse picking arm');
-    const lines = page.getByRole('button', { name: /^[AB] [\d\u2009.]+ N : Worst radial load of/ });
+    const lines = page.getByRole('button', { name: /^[AB] [\d\s.]+ N : Worst radial load of/ });
     expect(await lines.count()).toBe(10);
     await page.locator('.stage-canvas canvas').waitFor();
     expect(open.errors).toEqual([]);
@@ -95,7 +98,7 @@ describe('a journey over the sheet', () => {
       for (const { joint, bearings } of json.results[0]!.joints) {
         for (const [bearing, { radial_N }] of Object.entries(bearings)) {
           const cell = nowOf(joint, `${bearing} radial`);
-          await expect.poll(() => numberIn(cell), { timeout: 5000 }).toBeCloseTo(radial_N, 6);
+          await expect.poll(() => numberIn(cell), PATIENT).toBeCloseTo(radial_N, 6);
           const shown = ((await cell.textContent()) ?? '').replace(/[\u2009\s]/g, '').replace('N', '');
           expect(Math.abs(Number(shown) - radial_N)).toBeLessThanOrEqual(
             0.5 * 10 ** (Math.floor(Math.log10(radial_N)) - 3) + 1e-9,
@@ -112,29 +115,37 @@ describe('a journey over the sheet', () => {
     await status()
       .filter({ hasText: / of .* poses/ })
       .waitFor();
-    await page.getByRole('button', { name: 'Stop' }).click();
-    await status().filter({ hasText: 'stopped, partial' }).waitFor({ timeout: 20_000 });
+    await page.getByRole('button', { name: 'Stop', exact: true }).click();
+    await status().filter({ hasText: 'stopped, partial' }).waitFor(PATIENT);
   });
 
-  test('the worst loads are those of the command line, and their poses are a click away', async () => {
+  test('no worst load is below the grid of the command line, and its pose is a click away', async () => {
     const step = page.getByRole('spinbutton', { name: 'Step of the grid' });
-    await step.fill('60');
+    await step.fill('120');
     await step.press('Enter');
     await page.getByRole('button', { name: 'Sweep', exact: true }).click();
     await swept();
-    const json = armload('sweep', MODEL, '--step', '60') as SweepJson;
+    const json = armload('sweep', MODEL, '--step', '120') as SweepJson;
     for (const { joint, checks } of json.joints) {
       const radial = checks.filter((row) => row.check === 'radial');
       expect(radial.length).toBeGreaterThan(0);
       for (const row of radial) {
         const what = `${row.bearing} radial`;
         await page.getByRole('button', { name: new RegExp(`go to the worst pose of ${joint} ${what}$`) }).click();
-        await expect.poll(() => numberIn(nowOf(joint, what)), { timeout: 5000 }).toBeCloseTo(row.value, 6);
-        await expect(page.getByRole('combobox', { name: 'Case on stage' }).inputValue()).resolves.toBe(row.case);
-        for (const [i, { name }] of FILE.joints.entries()) {
-          const field = page.getByRole('spinbutton', { name: `Angle of ${name}` });
-          expect(Number(await field.inputValue())).toBeCloseTo(row.pose_deg[i]!, 1);
+        const line = page.locator(`tr:has([data-check="${joint}/${what}"])`);
+        const worst = Number(await line.locator('[data-worst]').getAttribute('data-worst'));
+        // The proof polishes what the grid finds: never less, and the same where the grid was as good.
+        expect(worst).toBeGreaterThanOrEqual(row.value * (1 - 1e-9));
+        await expect.poll(() => numberIn(nowOf(joint, what)), PATIENT).toBeCloseTo(worst, 6);
+        const load = await page.getByRole('combobox', { name: 'Case on stage' }).inputValue();
+        const pose: string[] = [];
+        for (const { name } of FILE.joints) {
+          pose.push(await page.getByRole('spinbutton', { name: `Angle of ${name}` }).inputValue());
         }
+        const at = armload('pose', MODEL, `--at=${pose.join(',')}`, '--case', load) as PoseJson;
+        const own = at.results[0]!.joints.find((each) => each.joint === joint)!.bearings[row.bearing]!;
+        // Angles are shown to a hundredth of a degree.
+        expect(Math.abs(own.radial_N - worst) / worst).toBeLessThan(1e-3);
       }
     }
   });
@@ -162,16 +173,16 @@ describe('a journey over the sheet', () => {
     const typed = await span.inputValue();
     await span.fill('3.5 in');
     await span.press('Enter');
-    await expect.poll(() => span.inputValue()).toBe('88.9');
-    await expect.poll(() => numberIn(cell)).not.toBe(before);
+    await expect.poll(() => span.inputValue(), PATIENT).toBe('88.9');
+    await expect.poll(() => numberIn(cell), PATIENT).not.toBe(before);
     await page.getByRole('button', { name: 'Undo' }).click();
-    await expect.poll(() => span.inputValue()).toBe(typed);
-    await expect.poll(() => numberIn(cell)).toBe(before);
+    await expect.poll(() => span.inputValue(), PATIENT).toBe(typed);
+    await expect.poll(() => numberIn(cell), PATIENT).toBe(before);
     await span.fill('-4');
     await span.press('Enter');
     await page.getByRole('alert').filter({ hasText: 'expected' }).waitFor();
     await span.press('Escape');
-    await expect.poll(() => span.inputValue()).toBe(typed);
+    await expect.poll(() => span.inputValue(), PATIENT).toBe(typed);
   });
 
   test('the arm, its edits and its pose are still there after a reload', async () => {
@@ -193,7 +204,7 @@ describe('a journey over the sheet', () => {
     await page.getByRole('combobox', { name: 'Sheet' }).selectOption(tone);
     const axe = createRequire(import.meta.url).resolve('axe-core/axe.min.js');
     await page.addScriptTag({ path: axe });
-    for (const panel of ['Joint', 'Worst loads', 'Two ways']) {
+    for (const panel of ['Joint', 'Checks', 'Worst loads', 'Two ways']) {
       await page.getByRole('tab', { name: panel }).click();
       await page.waitForTimeout(300);
       const found = await page.evaluate(async () => {
