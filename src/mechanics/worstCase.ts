@@ -1,18 +1,21 @@
 /**
- * The certified worst of many checks in one load case, whatever the load: spheres where it is a weight, spheres then branch and bound
- * where a tip force points anywhere, branch and bound for all else. Anytime: `step` does a slice of work, `rows` tells where things stand.
+ * The certified worst of many checks in one load case, whatever the load. Weights: spheres to any gap. Forces at rest: first the sum of
+ * separate bounds (`travelBounds.ts`, and `freeForceSearch.ts` where the force points anywhere), then branch and bound over boxes of angles. Motion:
+ * the sum of separate bounds alone, so there a gap is left and said. Anytime: `step` does a slice of work, `rows` tells where things stand.
  */
+import { seededRandom } from '../math/random.ts';
 import { BranchBound } from './branchBound.ts';
 import { InboardDirections } from './branchBoundInboard.ts';
-import { type Chain, type ChainCase, WRENCH } from './chain.ts';
+import type { Chain, ChainCase } from './chain.ts';
 import type { CheckForm } from './form.ts';
 import { FreeForceSearch, tipMass } from './freeForceSearch.ts';
-import { type FreePart, freePart } from './freeLoads.ts';
+import { type FreePart, freePart, worstAtPose } from './freeLoads.ts';
 import { GravityClimb } from './gravityClimb.ts';
 import { gravityLoad } from './gravityLoad.ts';
 import { type CheckState, GravitySearch, gapOf, isHomogeneous, ROUNDING, raiseByRounding } from './gravitySearch.ts';
 import { OutwardSets } from './outwardSets.ts';
-import { Polish } from './polish.ts';
+import { polish } from './polish.ts';
+import { sphereBounds } from './travelBounds.ts';
 
 export interface WorstRow {
   readonly check: CheckForm;
@@ -28,6 +31,9 @@ export interface WorstRow {
 /** Time that one go at a check should take, ms, and the boxes of its first go: how many a box costs depends on the load. */
 const SLICE_MS = 40;
 const FIRST_BOXES = 16;
+/** Poses of a first look at a check, and climbs in a case with motion. */
+const FIRST_POSES = 12;
+const MOVING_CLIMBS = 4;
 
 /** Allowable values of checks, in the check's unit. */
 export type Limits = ReadonlyMap<CheckForm, number>;
@@ -53,6 +59,8 @@ export class WorstCase {
   private readonly states: readonly CheckState[];
   private readonly inboard = new Map<number, InboardDirections>();
   private readonly limits: Limits;
+  /** First bounds, in the order of the states. */
+  private travel: readonly number[] | null = null;
 
   /**
    * `previous`: the search of an earlier layout of the same arm; its outward sets serve again where nothing outboard changed. `limits`: what
@@ -131,6 +139,16 @@ export class WorstCase {
 
   private advance(task: Task, gap: number): void {
     const { state } = task;
+    if (task.goes === 1 && !this.gravity) {
+      this.begin(task);
+      return;
+    }
+    // Boxes know nothing of speeds and accelerations: their bound would not be one.
+    if (this.load.speed !== null) {
+      this.climb(task);
+      task.spent = task.goes > MOVING_CLIMBS;
+      return;
+    }
     if (!task.branch) {
       task.branch = new BranchBound(this.chain, this.load, state.check, {
         gap,
@@ -152,6 +170,42 @@ export class WorstCase {
     const took = performance.now() - begin;
     task.boxes = Math.max(1, Math.min(4 * task.boxes, Math.round((task.boxes * SLICE_MS) / Math.max(took, 0.01))));
     this.take(task);
+  }
+
+  /** First bound, and the best of a few poses. */
+  private begin({ state }: Task): void {
+    this.travel ??= sphereBounds(
+      this.chain,
+      this.load,
+      this.states.map((one) => one.check),
+    );
+    state.bound = Math.min(state.bound, this.travel[this.states.indexOf(state)]!);
+    state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);
+    const random = seededRandom(state.check.joint + 1);
+    const { from, to } = this.chain;
+    for (let k = 0; k < FIRST_POSES; k++) {
+      this.offer(
+        state,
+        Float64Array.from(from, (low, i) => (k === 0 ? 0.5 * (low + to[i]!) : random.between(low, to[i]!))),
+      );
+    }
+    for (const pose of this.seeds(state)) this.offer(state, pose);
+  }
+
+  private offer(state: CheckState, pose: Float64Array): void {
+    const { value } = worstAtPose(this.chain, this.load, pose, state.check);
+    if (!(value > state.found)) return;
+    state.found = value;
+    state.pose.set(pose);
+    raiseByRounding(state);
+  }
+
+  /** Climbs from the best pose met; the first time from there, later from others. */
+  private climb({ state, goes }: Task): void {
+    const random = seededRandom(1000 * goes + state.check.joint);
+    const start =
+      goes === 2 ? state.pose : Float64Array.from(this.chain.from, (low, i) => random.between(low, this.chain.to[i]!));
+    this.offer(state, polish(this.chain, this.load, state.check, start).pose);
   }
 
   private take(task: Task): void {
@@ -186,16 +240,16 @@ export class WorstCase {
       const { free, wrench } = branch.state();
       return { ...result(state), free, wrench };
     }
-    const at = new Polish(this.chain, this.load, state.check);
-    const pose = Float64Array.from(state.pose);
-    const value = at.climb(pose);
-    if (value >= state.found) {
-      state.found = value;
-      state.pose.set(pose);
-    } else at.value(state.pose);
-    raiseByRounding(state);
-    const wrench = Float64Array.from(at.worst.wrench.subarray(0, WRENCH));
-    return { ...result(state), free: freePart(this.load, at.worst), wrench };
+    if (this.gravity && state.found !== Number.NEGATIVE_INFINITY) {
+      const fine = polish(this.chain, this.load, state.check, state.pose);
+      if (fine.value >= state.found) {
+        state.found = fine.value;
+        state.pose.set(fine.pose);
+      }
+      raiseByRounding(state);
+    }
+    const { wrench, ...worst } = worstAtPose(this.chain, this.load, state.pose, state.check);
+    return { ...result(state), free: freePart(this.load, { ...worst, wrench }), wrench: Float64Array.from(wrench) };
   }
 }
 

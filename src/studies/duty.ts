@@ -9,7 +9,7 @@ import { isRingParts, jointParts } from '../capacity/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { type Chain, type ChainCase, flattenArm, WRENCH } from '../mechanics/chain.ts';
 import { bearingDuty, dutySystem, NOTHING, type Run } from './dutyBearing.ts';
-import { sphereBounds, type TravelBounds } from './dutyBounds.ts';
+import { sphereBounds, type TravelBounds } from '../mechanics/travelBounds.ts';
 import { pathWear } from './dutyPath.ts';
 import type { DutyBearing, DutyResult, JointSegment, PartSegment, SegmentResult } from './dutyResult.ts';
 import { travelLoads } from './dutyTravel.ts';

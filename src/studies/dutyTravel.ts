@@ -12,7 +12,7 @@ import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
 import { type CheckForm, checkValue } from '../mechanics/form.ts';
 import { poseScratch, staticLoads } from '../mechanics/newtonEuler.ts';
 import { Polish, type Polished, polish } from '../mechanics/polish.ts';
-import type { TravelBounds } from './dutyBounds.ts';
+import type { TravelBounds } from '../mechanics/travelBounds.ts';
 import { samplePoses } from './samplePoses.ts';
 
 /** Poses looked at for a start of each climb. */

@@ -13,7 +13,7 @@ export type { Arrangement, CompareOptions, ComparePlan, CompareRefusal, Layout }
 export { planCompare, SPAN_STEPS } from './comparePlan.ts';
 export type { DutyOptions } from './duty.ts';
 export { dutyStudy } from './duty.ts';
-export type { TravelBounds } from './dutyBounds.ts';
+export type { TravelBounds } from '../mechanics/travelBounds.ts';
 export type * from './dutyResult.ts';
 export { dutyRows, WHOLE_ARM } from './dutyRows.ts';
 export type { JointPlayResult, PlayOptions, PlayResult, TipResult } from './play.ts';

@@ -9,7 +9,7 @@
 import type { Arm, Vec3 } from '../arm/arm.ts';
 import { isRingParts, jointParts } from '../capacity/index.ts';
 import { type Chain, type ChainCase, flattenArm } from '../mechanics/chain.ts';
-import { pointSets, sphereBounds, type TravelBounds } from './dutyBounds.ts';
+import { pointSets, sphereBounds, type TravelBounds } from '../mechanics/travelBounds.ts';
 import { type JointGive, jointGive, type SidePlay } from './playJoint.ts';
 import { type SideMotion, sideMotions } from './playMotion.ts';
 import { reachBound } from './playReach.ts';

@@ -1,7 +1,11 @@
 /**
  * What would help most: how the worst value of a check moves with each dimension, mass and travel limit. By the envelope theorem the
  * slope of a maximum is the slope at the pose that attains it with that pose held (at a travel limit the pose goes with the limit), so
- * nothing needs to be searched again. Where two poses tie, the slope is that of the one reported.
+ * nothing needs to be searched again.
+ *
+ * Where two poses (or two places on a shaft, or two forms) tie, the slope is that of the one reported. The worst then has a corner: it rises at
+ * least as fast as this slope says one way, and falls at most as fast the other way, because the pose reported remains a pose. So a slope
+ * never promises more than a larger value, and one that promises a smaller value may be cut short by the other pose.
  */
 import type { Arm } from '../arm/arm.ts';
 import { withLinkMass, withPair } from '../arm/changeArm.ts';
@@ -32,20 +36,23 @@ const TRAVEL_STEP = (5 * Math.PI) / 180;
 /** How close to a limit counts as at it, rad. */
 const AT_LIMIT = 1e-7;
 
+/** The check that a row speaks of. */
+export function checkOfRow(chain: Chain, row: CheckRow, checks: readonly CheckForm[]): CheckForm | null {
+  const joint = chain.jointIndex.indexOf(row.jointIndex);
+  return checks.find((c) => c.joint === joint && c.bearing === row.bearing && c.check === row.check) ?? null;
+}
+
 /** Value of the row's check on another arm, its pose and free parts held; NaN where that arm has no such check. */
 export function valueHeld(arm: Arm, row: CheckRow, checksOf: ChecksOf, pose: readonly number[] = row.pose): number {
   const chain = flattenArm(arm);
   const load = chain.cases.find((c) => c.name === row.case);
-  const joint = chain.jointIndex.indexOf(row.jointIndex);
-  const check = checksOf(arm, chain).find(
-    (c) => c.joint === joint && c.bearing === row.bearing && c.check === row.check,
-  );
+  const check = checkOfRow(chain, row, checksOf(arm, chain));
   if (!load || !check) return Number.NaN;
   const still = new Float64Array(chain.n);
   const rates = { speed: row.free?.speed ?? still, accel: row.free?.accel ?? still };
   const out = new Float64Array(WRENCH * chain.n);
   dynamicLoads(chain, load, pose, rates, out, poseScratch(chain.n), row.free?.tipForce ?? null);
-  return checkValue(check, out, WRENCH * joint);
+  return checkValue(check, out, WRENCH * check.joint);
 }
 
 /** Slopes of one row, those that would help most by a modest step first; quantities without effect are left out. */
@@ -95,7 +102,9 @@ function addTravel(arm: Arm, row: CheckRow, checksOf: ChecksOf, slopes: Slope[])
           row.pose.map((q, k) => (k === i ? q + d : q)),
         );
       const slope = (at(STEP) - at(-STEP)) / (2 * STEP);
-      if (!(Math.abs(slope) > 1e-9 * Math.abs(row.value))) continue;
+      // The pose leans on the limit it would like to pass; the other end of a joint without travel holds nothing.
+      const outward = what === 'travel from' ? -slope : slope;
+      if (!(outward > 1e-9 * Math.abs(row.value))) continue;
       slopes.push({
         what,
         name: chain.names[i]!,

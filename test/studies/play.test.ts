@@ -10,7 +10,7 @@ import { shaftLoads } from '../../src/mechanics/beamForms.ts';
 import { solveShaft } from '../../src/mechanics/beamStepped.ts';
 import { flattenArm, WRENCH } from '../../src/mechanics/chain.ts';
 import { poseScratch, staticLoads, tipReach } from '../../src/mechanics/newtonEuler.ts';
-import { pointSets } from '../../src/studies/dutyBounds.ts';
+import { pointSets } from '../../src/mechanics/travelBounds.ts';
 import { armGives, playStudy, tipErrorAt } from '../../src/studies/play.ts';
 import { lawAt, reachBound, straightPieces } from '../../src/studies/playReach.ts';
 import { playRows } from '../../src/studies/playRows.ts';

@@ -1,27 +1,27 @@
 /**
  * What nothing within the travel exceeds, for the segments of a duty that may be anywhere in it.
  *
- * Weights (and a tip force along gravity) are bounded by the sphere search (`../mechanics/gravitySearch.ts`). Every other force of the case
+ * Weights (and a tip force along gravity) are bounded by the sphere search (`gravitySearch.ts`). Every other force of the case
  * comes on top with its own most anywhere in the travel, whatever its direction: a force free to point anywhere at a point of a link is a
  * weight there under free gravity, so `GravityCheck.cap` bounds it. A sum of bounds is a bound; it is loose by as much as the parts do not
  * want the same pose. `TravelBounds` lets a caller give the certified worst of the same forms instead.
  *
  * Motion. With |q̇| ≤ ω, |q̈| ≤ α and D_jb the most that the centre of link b comes to stand off axis j, its acceleration is at most
  *
- *     a_b = Σ_j α_j D_jb + Σ_{j≤k} c ω_j ω_k D_kb,      c = 1 for j = k, else 2          (`../mechanics/freeLoadsPose.ts`)
+ *     a_b = Σ_j α_j D_jb + Σ_{j≤k} c ω_j ω_k D_kb,      c = 1 for j = k, else 2          (`freeLoadsPose.ts`)
  *
  * so its mass adds a force m_b a_b there, and its inertia I about the centre a moment of at most I (|ω̇| + |ω|²). Every term of a_b stands
  * across its axis j, so along the axis of the joint looked at it has at most the sine of the angle between the two: none where they are
  * parallel. Force along and across the axis are bounded each by itself. Own derivation; held against random poses and motions.
  */
-import { type Chain, type ChainCase, INERTIA, WRENCH } from '../mechanics/chain.ts';
-import { DirectionValue } from '../mechanics/directionValue.ts';
-import type { CheckForm, Form } from '../mechanics/form.ts';
-import { GravityCheck } from '../mechanics/gravityCheck.ts';
-import { GravityClimb } from '../mechanics/gravityClimb.ts';
-import { gravityLoad } from '../mechanics/gravityLoad.ts';
-import { GravitySearch } from '../mechanics/gravitySearch.ts';
-import { OutwardSets } from '../mechanics/outwardSets.ts';
+import { type Chain, type ChainCase, INERTIA, WRENCH } from './chain.ts';
+import { DirectionValue } from './directionValue.ts';
+import type { CheckForm, Form } from './form.ts';
+import { GravityCheck } from './gravityCheck.ts';
+import { GravityClimb } from './gravityClimb.ts';
+import { gravityLoad } from './gravityLoad.ts';
+import { GravitySearch } from './gravitySearch.ts';
+import { OutwardSets } from './outwardSets.ts';
 
 /** Bounds of forms in one case over the travel, in the order given. Never below what occurs; NaN or Infinity where not known. */
 export type TravelBounds = (chain: Chain, load: ChainCase, checks: readonly CheckForm[]) => readonly number[];

@@ -9,10 +9,10 @@ import { flattenArm, WRENCH } from '../../src/mechanics/chain.ts';
 import { checkValue } from '../../src/mechanics/form.ts';
 import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { dynamicLoads, poseScratch } from '../../src/mechanics/newtonEuler.ts';
-import { sphereBounds } from '../../src/studies/dutyBounds.ts';
+import { sphereBounds } from '../../src/mechanics/travelBounds.ts';
 import { travelLoads } from '../../src/studies/dutyTravel.ts';
 import { randomArm } from '../randomArm.ts';
-import { armOf } from './smallArms.ts';
+import { armOf } from '../studies/smallArms.ts';
 
 const ball = { ...bareBearing('deep-groove', 0.02, 0.042, 0.012), C: 9400, C0: 5000 };
 const angular = { ...bareBearing('angular-contact', 0.02, 0.042, 0.012, Math.PI / 12), C: 10000, C0: 6000 };
