@@ -34,8 +34,9 @@ function buildProgram(end: (code: ExitCode) => void): Command {
       `
 Examples:
   armload check models/picking-arm.arm.json
-  armload pose models/picking-arm.arm.json --at=0,-30,60,0,45
-  armload sweep models/picking-arm.arm.json --step 15
+  armload pose models/picking-arm.arm.json --at=0,30,-60,0,45
+  armload sweep models/picking-arm.arm.json --samples 5
+  armload worst models/swing-joint.arm.json
   armload compare models/picking-arm.arm.json --joint elbow
 
 Angles are degrees, one for each revolute joint from the ground to the tip. "armload <verb> --help" tells more.
@@ -62,7 +63,7 @@ A design aid: results are to be checked by a competent engineer.`,
     'pose',
     'Joint loads and bearing loads at one pose.',
     async (file, options) => (await import('./pose.ts')).pose(file, options as never),
-    'armload pose models/picking-arm.arm.json --at=0,-30,60,0,45 --case carry',
+    'armload pose models/picking-arm.arm.json --at=0,30,-60,0,45 --case "carry a crate"',
   )
     .requiredOption('--at <angles>', 'joint angles in degrees, from the ground to the tip, such as -10,20', angleList)
     .option('--case <name>', 'only this load case; may be given again', collect)
@@ -84,7 +85,7 @@ A design aid: results are to be checked by a competent engineer.`,
       'sweep',
       'The worst load of every bearing over a grid of poses, with its pose and case.',
       async (file, options) => (await import('./sweep.ts')).sweep(file, options),
-      'armload sweep models/picking-arm.arm.json --step 30\n  armload sweep models/two-link.arm.json --samples 20 --each-case --json',
+      'armload sweep models/picking-arm.arm.json --step 45\n  armload sweep models/two-link.arm.json --samples 20 --each-case --json',
     ),
   )
     .option('--each-case', 'the worst case by case instead of over all cases')
@@ -94,7 +95,7 @@ A design aid: results are to be checked by a competent engineer.`,
     'worst',
     'The certified worst pose of every check: attained values, and bounds that nothing within travel exceeds.',
     async (file, options) => (await import('./worst.ts')).worst(file, options),
-    'armload worst models/two-link.arm.json\n  armload worst models/six-joint.arm.json --gap 0.01 --seconds 10',
+    'armload worst models/swing-joint.arm.json\n  armload worst models/two-link.arm.json --gap 0.01 --seconds 10',
   )
     .option(
       '--gap <share>',
