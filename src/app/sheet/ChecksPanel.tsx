@@ -25,7 +25,7 @@ export function ChecksPanel() {
       <thead>
         <tr>
           <th scope="col">Check</th>
-          <th scope="col" className="number">
+          <th scope="col" className="number now">
             Now
           </th>
           <th scope="col" className="number">
@@ -67,7 +67,7 @@ function CheckLine({ row, now }: { row: CheckRow; now: CheckRow | undefined }) {
       <th scope="row" className="load-name">
         {what}
       </th>
-      <td className="number">
+      <td className="number now">
         <Value value={now?.value} unit={row.unit} />
       </td>
       <td className="number">

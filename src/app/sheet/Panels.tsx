@@ -3,6 +3,7 @@ import { Tab, TabList, TabPanel, Tabs } from 'react-aria-components';
 import { type PanelName, showPanel, useView } from '../store/viewStore.ts';
 import { ChecksPanel } from './ChecksPanel.tsx';
 import { JointPanel } from './JointPanel.tsx';
+import { SharesPanel } from './SharesPanel.tsx';
 import { WaysPanel } from './WaysPanel.tsx';
 import { WorstPanel } from './WorstPanel.tsx';
 
@@ -13,6 +14,7 @@ export function Panels() {
       <TabList aria-label="Panels of the sheet" className="panel-names">
         <Tab id="joint">Joint</Tab>
         <Tab id="checks">Checks</Tab>
+        <Tab id="shares">Shares</Tab>
         <Tab id="worst">Worst loads</Tab>
         <Tab id="ways">Two ways</Tab>
       </TabList>
@@ -21,6 +23,9 @@ export function Panels() {
       </TabPanel>
       <TabPanel id="checks" className="panel">
         <ChecksPanel />
+      </TabPanel>
+      <TabPanel id="shares" className="panel">
+        <SharesPanel />
       </TabPanel>
       <TabPanel id="worst" className="panel">
         <WorstPanel />

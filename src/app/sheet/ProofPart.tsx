@@ -35,7 +35,7 @@ function proofText(
   asked: number,
   running: boolean,
 ): string {
-  if (trouble) return trouble;
+  if (trouble) return `The proof failed: ${trouble}`;
   const bounded = rows.filter((row) => row.gap !== null && Number.isFinite(row.gap));
   if (!present || bounded.length === 0) return running ? 'Proof under way' : 'Not proved';
   const all = rows.filter((row) => row.pose.length > 0).length;

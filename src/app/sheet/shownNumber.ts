@@ -13,7 +13,8 @@ export function shownNumber(value: number, quantity: Quantity, units: UnitSystem
 }
 
 export function shownQuantity(value: number, quantity: Quantity, units: UnitSystem, digits = 3): string {
-  return `${shownNumber(value, quantity, units, digits)} ${SHOWN_UNITS[units][quantity]}`;
+  const unit = SHOWN_UNITS[units][quantity];
+  return `${shownNumber(value, quantity, units, digits)}${unit.startsWith('°') ? '' : ' '}${unit}`;
 }
 
 const QUANTITIES: Readonly<Record<string, Quantity>> = {

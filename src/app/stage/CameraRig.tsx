@@ -1,14 +1,15 @@
 /** The camera: an axonometric view without perspective, upright against gravity, that holds the whole arm. */
 import { useFrame, useThree } from '@react-three/fiber';
-import { useEffect, useRef } from 'react';
+import { useEffect, useMemo, useRef } from 'react';
 import { type OrthographicCamera, Vector3 } from 'three';
 import { OrbitControls } from 'three/addons/controls/OrbitControls.js';
 import type { Chain } from '../../mechanics/chain.ts';
+import type { ArmOnSheet } from '../store/documentStore.ts';
 import { poseStore } from '../store/poseStore.ts';
 import { useView } from '../store/viewStore.ts';
 import { framesAt, outlinePoints } from './forwardFrames.ts';
 import { bufferSize } from './inkMaterials.ts';
-import { armSize } from './linkSolids.ts';
+import { armSize, groundMount, jointLook } from './linkSolids.ts';
 import { frameDrawn, useStageAsk, type ViewName } from './stageStore.ts';
 
 /** Up on the sheet: against gravity, or the base's z where there is none. */
@@ -41,7 +42,8 @@ function viewFrom(view: ViewName, chain: Chain, pose: readonly number[], joint: 
 /** Room around the arm for letters and for the buttons along the edges, px. */
 const MARGIN = { across: 96, up: 72 } as const;
 
-export function CameraRig({ chain, index }: { chain: Chain; index: number }) {
+export function CameraRig({ sheet, index }: { sheet: ArmOnSheet; index: number }) {
+  const { arm, chain } = sheet;
   const camera = useThree((state) => state.camera) as OrthographicCamera;
   const canvas = useThree((state) => state.gl.domElement);
   const size = useThree((state) => state.size);
@@ -50,6 +52,12 @@ export function CameraRig({ chain, index }: { chain: Chain; index: number }) {
   const ask = useStageAsk();
   const controls = useRef<OrbitControls | null>(null);
   const extent = armSize(chain);
+  const mount = useMemo(() => {
+    const looks = chain.jointIndex.map((k) => jointLook(arm.joints[k]!, arm, extent));
+    const { solid, mount: place } = groundMount(chain, looks, extent);
+    solid?.dispose();
+    return place.at;
+  }, [arm, chain, extent]);
 
   // biome-ignore lint/correctness/useExhaustiveDependencies: a new arm or a new asking points the camera, nothing else does
   useEffect(() => {
@@ -66,7 +74,7 @@ export function CameraRig({ chain, index }: { chain: Chain; index: number }) {
       const up = upOf(chain);
       if (Math.abs(from.dot(up)) > 0.99) camera.up.copy(viewFrom('side', chain, pose, index).cross(up).negate());
     }
-    aim(camera, orbit, from, outlinePoints(chain, pose), extent, size);
+    aim(camera, orbit, from, [mount, ...outlinePoints(chain, pose)], extent, size);
     invalidate();
     return () => {
       orbit.dispose();
@@ -80,7 +88,7 @@ export function CameraRig({ chain, index }: { chain: Chain; index: number }) {
       const orbit = controls.current;
       const { pose, playing } = poseStore.getState();
       if (!orbit || playing || pose.length !== chain.n) return;
-      const points = outlinePoints(chain, pose);
+      const points = [mount, ...outlinePoints(chain, pose)];
       if (points.every((point) => onStage(point, camera))) return;
       const from = camera.position.clone().sub(orbit.target).normalize();
       aim(camera, orbit, from, points, extent, size);
@@ -95,7 +103,7 @@ export function CameraRig({ chain, index }: { chain: Chain; index: number }) {
       leave();
       clearTimeout(wait);
     };
-  }, [camera, chain, extent, invalidate, size]);
+  }, [camera, chain, extent, mount, invalidate, size]);
 
   useFrame(() => {
     gl.getDrawingBufferSize(bufferSize);

@@ -61,7 +61,7 @@ export default function Stage() {
           <ArmModel sheet={sheet} />
           <SweptTrace sheet={sheet} />
           <LoadArrows sheet={sheet} index={index} scale={scale} />
-          <CameraRig chain={sheet.chain} index={index} />
+          <CameraRig sheet={sheet} index={index} />
         </Canvas>
       </div>
       <StageLetters sheet={sheet} index={index} scale={scale} />

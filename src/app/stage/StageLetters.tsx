@@ -60,7 +60,8 @@ export function StageLetters({ sheet, index, scale }: StageLettersProps) {
         return place(new Vector3(0, 0, support?.hub ?? 0).applyMatrix4(housing), camera);
       });
       const tipAt = place(frames.tip, camera);
-      const taken = [roomOf(tipText, tipAt.x + 18, tipAt.y + 4, 'start'), BUTTONS];
+      const ring = { x0: tipAt.x - 15, x1: tipAt.x + 15, y0: tipAt.y - 15, y1: tipAt.y + 15 };
+      const taken = [roomOf(tipText, tipAt.x + 18, tipAt.y + 4, 'start'), ring, BUTTONS];
       for (const label of LETTERS) part(`load ${label}`)?.setAttribute('visibility', 'hidden');
       for (const load of shownLoads(sheet, pose, index, name)) {
         const group = part(`load ${load.label}`);

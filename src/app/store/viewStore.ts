@@ -4,13 +4,15 @@ import type { BearingName } from '../../studies/results.ts';
 import type { UnitSystem } from '../../units/format.ts';
 import { useDocument } from './documentStore.ts';
 
-export type PanelName = 'joint' | 'checks' | 'worst' | 'ways';
+export type PanelName = 'joint' | 'checks' | 'shares' | 'worst' | 'ways';
 export type SheetChoice = 'system' | 'paper' | 'night';
 
 export interface ViewState {
   /** Index into the arm file's joints. */
   readonly joint: number;
   readonly bearing: BearingName | null;
+  /** Check whose shares are shown, as `A radial`; null: the one that governs. */
+  readonly check: string | null;
   /** Name of the case whose loads the present pose shows. */
   readonly case: string;
   readonly panel: PanelName;
@@ -21,6 +23,7 @@ export interface ViewState {
 export const useView = create<ViewState>(() => ({
   joint: 0,
   bearing: null,
+  check: null,
   case: '',
   panel: 'joint',
   units: 'metric',
@@ -28,7 +31,7 @@ export const useView = create<ViewState>(() => ({
 }));
 
 export function selectJoint(joint: number, bearing: BearingName | null = null): void {
-  useView.setState({ joint, bearing });
+  useView.setState({ joint, bearing, check: null });
 }
 
 export function showCase(name: string): void {
