@@ -32,11 +32,11 @@ export function fixedText(value: number, decimals: number): string {
   return Number(text) === 0 ? (0).toFixed(decimals) : text;
 }
 
-/** Decimals that show the largest of some numbers with `digits` significant digits, 0 to 6. */
+/** Decimals that show the largest of some numbers with `digits` significant digits, 0 to 6; 1 where all would read 0. */
 export function decimalsFor(values: Iterable<number>, digits = 4): number {
   let largest = 0;
   for (const value of values) if (Number.isFinite(value)) largest = Math.max(largest, Math.abs(value));
-  if (largest === 0) return 1;
+  if (largest < 5e-7) return 1;
   return Math.min(6, Math.max(0, digits - 1 - Math.floor(Math.log10(largest))));
 }
 
