@@ -18,9 +18,15 @@ export interface Claim {
   readonly bound: number;
 }
 
-/** Loads and, where the arm has bearings and shafts, the convex demands on them. */
+const known = new WeakMap<Arm, readonly CheckForm[]>();
+
+/** Loads and, where the arm has bearings and shafts, the convex demands on them; made once for an arm. */
 export function allChecks(arm: Arm, chain: Chain): readonly CheckForm[] {
-  return [...loadChecks(arm, chain), ...capacityForms(capacityChecks(arm, chain))];
+  const before = known.get(arm);
+  if (before) return before;
+  const made = [...loadChecks(arm, chain), ...capacityForms(capacityChecks(arm, chain))];
+  known.set(arm, made);
+  return made;
 }
 
 /** `count` of a list, spread by a seed; all of it where it is not longer. */
@@ -76,7 +82,7 @@ export class Plain {
 }
 
 /** Free parts by chance: the tip force anywhere, accelerations at their limits, speeds at or within theirs. */
-function randomFree(load: ChainCase, n: number, random: Random): FreePart | null {
+export function randomFree(load: ChainCase, n: number, random: Random): FreePart | null {
   if (!hasFree(load)) return null;
   const sign = () => (random.next() < 0.5 ? -1 : 1);
   return {

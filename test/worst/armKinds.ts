@@ -1,5 +1,15 @@
 /** Kinds of random arms that a certified worst must hold for, near-degenerate ones among them. */
-import type { Arm, Joint, LoadCase, Mat3, TipForce, Vec3 } from '../../src/arm/arm.ts';
+import type {
+  Arm,
+  Joint,
+  LoadCase,
+  Mat3,
+  RollingBearing,
+  RollingKind,
+  Shaft,
+  TipForce,
+  Vec3,
+} from '../../src/arm/arm.ts';
 import { seededRandom } from '../../src/math/random.ts';
 import { times, turned } from '../armVariants.ts';
 import { type RandomArmOptions, randomArm } from '../randomArm.ts';
@@ -177,5 +187,78 @@ export function severalCases(seed: number, joints: number): Arm {
       { ...load, name: 'any', payload: null, tipForce: { magnitude: 30, direction: 'any' }, factor: 1.2 },
       { ...down, name: 'press', factor: random.between(0.5, 2) },
     ],
+  };
+}
+
+const NO_RATING = { C: null, C0: null, e: null, Y: null, Y0: null, f0: null, source: null } as const;
+const NO_SIZE = { pitchDiameter: null, ballDiameter: null, balls: null, shaftFit: null, housingFit: null } as const;
+
+function bearing(kind: RollingKind, bore: number, more: Partial<RollingBearing>): RollingBearing {
+  return {
+    ...NO_RATING,
+    ...NO_SIZE,
+    kind,
+    bore,
+    outer: 2 * bore,
+    width: 0.6 * bore,
+    contactAngle: null,
+    rows: 1,
+    clearance: 'CN',
+    misalignment: 1e-3,
+    stiffness: null,
+    C: 9000,
+    C0: 5000,
+    ...more,
+  };
+}
+
+const BEARINGS = {
+  groove: bearing('deep-groove', 0.02, {}),
+  rollers: bearing('cylindrical-roller', 0.02, {}),
+  angular: bearing('angular-contact', 0.02, { contactAngle: (40 * Math.PI) / 180 }),
+  crossed: bearing('crossed-roller', 0.08, { pitchDiameter: 0.12, contactAngle: Math.PI / 4 }),
+} as const;
+
+/** Bearings and stepped shafts on every joint, invented: deep groove with rollers, adjusted angular contact, rings. */
+export function withParts(arm: Arm, seed: number): Arm {
+  const random = seededRandom(seed + 333);
+  return {
+    ...withJoints(arm, (joint, k) => {
+      const { support } = joint;
+      if (support?.arrangement !== 'clevis' && support?.arrangement !== 'cantilever') return joint;
+      const diameter = random.between(0.015, 0.03);
+      const end = support.stationA + 0.5 * (support.stationB - support.stationA);
+      const shaft: Shaft = {
+        diameter,
+        bore: random.next() < 0.5 ? 0 : 0.4 * diameter,
+        material: 'steel-c45',
+        turnsWith: random.next() < 0.7 ? 'link' : 'housing',
+        finish: 'machined',
+        sections: [
+          {
+            from: Math.min(end, support.stationA),
+            to: Math.max(end, support.stationA),
+            diameter: 0.9 * diameter,
+            bore: 0,
+            bendingFactor: 1.6,
+            torsionFactor: 1.3,
+            notchRadius: 1e-3,
+          },
+        ],
+      };
+      if ((k + seed) % 4 === 3) {
+        return {
+          ...joint,
+          support: { arrangement: 'ring', hub: support.hub, station: support.stationA, bearing: 'crossed', shaft },
+        };
+      }
+      const pair = { ...support, shaft, bearingA: 'groove', bearingB: 'rollers', thrust: 'A' } as const;
+      if ((k + seed) % 4 !== 2) return { ...joint, support: pair };
+      return {
+        ...joint,
+        support: { ...pair, bearingA: 'angular', bearingB: 'angular', thrust: 'both', adjusted: 'back-to-back' },
+      };
+    }),
+    bearings: BEARINGS,
   };
 }

@@ -1,0 +1,35 @@
+/** The certified worst of every load that is more than weights against the same adversary: 128 random arms of 1 to 8 joints, 16 kinds. */
+import { describe, expect, it } from 'vitest';
+import type { Arm } from '../../src/arm/arm.ts';
+import { flattenArm } from '../../src/mechanics/chain.ts';
+import { WorstCase } from '../../src/mechanics/worstCase.ts';
+import { allChecks, type Claim, contradictions, some } from './adversary.ts';
+import { OTHER_KINDS } from './armKinds.ts';
+
+const GAP = 2e-2;
+/** Checks of an arm looked at, and slices of work: a bound must hold however far the search has come. */
+const CHECKS = 5;
+const SLICES = 12;
+
+function claims(arm: Arm, seed: number): readonly Claim[] {
+  const chain = flattenArm(arm);
+  const search = new WorstCase(chain, chain.cases[0]!, some(allChecks(arm, chain), CHECKS, seed));
+  for (let k = 0; k < SLICES && search.open(GAP); k++) search.step(GAP);
+  return search.rows();
+}
+
+describe('no pose of 10,000, some climbed, exceeds a bound of other loads', () => {
+  OTHER_KINDS.forEach((kind, k) => {
+    const first = 1000 + 10 * k + 1;
+    it(`${kind.name}: 1–8 joints, seeds ${first}–${first + 7}`, () => {
+      const said: string[] = [];
+      for (let joints = 1; joints <= 8; joints++) {
+        const seed = first + joints - 1;
+        const arm = kind.make(seed, joints);
+        const found = contradictions(arm, 0, claims(arm, seed), { seed, poses: 10_000, climbs: 2 });
+        said.push(...found.map((line) => `seed ${seed}: ${line}`));
+      }
+      expect(said).toEqual([]);
+    });
+  });
+});
