@@ -1,5 +1,6 @@
 /** Check rows in the contract's JSON shape, and the exit code they ask for. */
 import { degrees } from '../report/shown.ts';
+import { WHOLE_ARM } from '../studies/dutyRows.ts';
 import { type CheckRow, isMissing } from '../studies/results.ts';
 import { fromSI } from '../units/unit.ts';
 import { EXIT, type ExitCode } from './exit.ts';
@@ -45,6 +46,7 @@ export function rowObject(row: CheckRow): Json {
 export function jointObjects(rows: readonly CheckRow[]): readonly Json[] {
   const joints = new Map<number, { joint: string; checks: Json[] }>();
   for (const row of rows) {
+    if (row.jointIndex === WHOLE_ARM) continue;
     const entry = joints.get(row.jointIndex) ?? { joint: row.joint, checks: [] };
     joints.set(row.jointIndex, entry);
     entry.checks.push(rowObject(row));
@@ -52,12 +54,23 @@ export function jointObjects(rows: readonly CheckRow[]): readonly Json[] {
   return [...joints.values()];
 }
 
+/** Rows that belong to no joint: system life, tip error. */
+export function armObjects(rows: readonly CheckRow[]): readonly Json[] {
+  return rows.filter((row) => row.jointIndex === WHOLE_ARM).map(rowObject);
+}
+
+/** A life without end is a value; any other endless value is a failure, like one that is not a number. */
+function isFailed(row: CheckRow): boolean {
+  if (isMissing(row)) return false;
+  return Number.isNaN(row.value) || (!Number.isFinite(row.value) && !/life$/.test(row.check));
+}
+
 /**
  * 1 where a check is over its limit or could not be computed; with `strict` also where one was not assessed, or where nothing was
  * held against a limit at all. A `pass` with a utilisation above 1 or none does not count as one.
  */
 export function exitOf(rows: readonly CheckRow[], strict: boolean): ExitCode {
-  const failed = rows.filter((row) => !Number.isFinite(row.value) && !isMissing(row));
+  const failed = rows.filter(isFailed);
   const judged = rows.filter((row) => row.verdict !== null);
   const over = judged.filter(
     (row) => row.verdict === 'over' || (row.verdict === 'pass' && !(row.utilisation !== null && row.utilisation <= 1)),

@@ -1,6 +1,7 @@
 /** `armload worst`: the certified worst pose of every check. */
 import { secondsText } from '../report/shown.ts';
-import { armCapacity, assessRows } from '../studies/assess.ts';
+import { armCapacity, assessRows, byJoint } from '../studies/assess.ts';
+import { lastingRows } from '../studies/lastingRows.ts';
 import { DEFAULT_GAP, DEFAULT_SECONDS, type WorstResult } from '../studies/worstArm.ts';
 import { runWorst } from '../studies/worstRun.ts';
 import { chooseCases, onlyCases } from './chooseCases.ts';
@@ -10,7 +11,7 @@ import { openArm } from './openArm.ts';
 import { openPool } from './openPool.ts';
 import { print, printCaution, printJson, warn } from './output.ts';
 import { progressBar } from './progressBar.ts';
-import { exitOf, jointObjects } from './rowObjects.ts';
+import { armObjects, exitOf, jointObjects } from './rowObjects.ts';
 import { rowTables } from './shownRows.ts';
 
 export interface WorstOptions {
@@ -69,7 +70,9 @@ export async function worst(file: string, options: WorstOptions): Promise<ExitCo
   const result = ended ?? best;
   const stopped = interrupt.signal.aborted;
   const capacity = armCapacity(arm, chain);
-  const rows = assessRows(chain, capacity, options.eachCase ? result.eachCase : result.rows, { gap });
+  const worstRows = assessRows(chain, capacity, options.eachCase ? result.eachCase : result.rows, { gap });
+  // Means and ranges of loads, not extremes: they belong to no single case and take a moment that a stop does not grant.
+  const rows = stopped || options.eachCase ? worstRows : byJoint([...worstRows, ...lastingRows(arm, chain)]);
   if (options.json) {
     printJson(arm, {
       gap_asked: gap,
@@ -77,6 +80,7 @@ export async function worst(file: string, options: WorstOptions): Promise<ExitCo
       partial: result.partial || stopped,
       seconds: result.seconds,
       joints: jointObjects(rows),
+      whole_arm: armObjects(rows),
     });
   } else {
     print(`${arm.name}: worst loads within travel, ${caseText(arm.cases.length)}, to a gap of ${gap * 100} %\n`);

@@ -35,15 +35,20 @@ const AROUND = 32;
 /** What the sums here may lose to rounding, relative. */
 const OUTWARD = 1 + 1e-12;
 
-/** Bounds by the sphere search, force by force. */
-export const sphereBounds: TravelBounds = (chain, load, checks) => {
+/** Bounds by the sphere search, force by force; `rounds` of refinement at most. */
+export const sphereBounds = (
+  chain: Chain,
+  load: ChainCase,
+  checks: readonly CheckForm[],
+  rounds = ROUNDS,
+): readonly number[] => {
   const whole = gravityLoad(chain, load);
   const still: ChainCase = { ...load, force: 'none', magnitude: 0, speed: null, accel: null };
   const searched = whole ? load : still;
   const weights = whole ?? gravityLoad(chain, still)!;
   const bare = checks.map((check): CheckForm => ({ ...check, forms: check.forms.map(homogeneous) }));
   const search = new GravitySearch(chain, searched, weights, bare, new GravityClimb(chain, searched));
-  for (let round = 0; round < ROUNDS && search.open(GAP); round++) search.round(GAP);
+  for (let round = 0; round < rounds && search.open(GAP); round++) search.round(GAP);
   const others = whole ? [] : otherForces(chain, load);
   return checks.map((check, k) => {
     const extra = others.length === 0 ? 0 : Math.max(...check.forms.map((f) => mostOf(chain, check.joint, f, others)));

@@ -33,6 +33,7 @@ const SLICE_MS = 40;
 const FIRST_BOXES = 16;
 /** Poses of a first look at a check, and climbs in a case with motion. */
 const FIRST_POSES = 12;
+const FIRST_ROUNDS = 2;
 const MOVING_CLIMBS = 4;
 
 /** Allowable values of checks, in the check's unit. */
@@ -94,6 +95,15 @@ export class WorstCase {
     }));
   }
 
+  /** Whether every check has been looked at, so that it has a value and a bound. */
+  get begun(): boolean {
+    return this.tasks.every((task) => !this.isNew(task));
+  }
+
+  private isNew({ state, goes }: Task): boolean {
+    return goes === 0 && state.found === Number.NEGATIVE_INFINITY;
+  }
+
   /** Whether more work can bring a check to the gap. */
   open(gap: number): boolean {
     return this.gravity?.open(gap) || this.tasks.some((task) => !task.spent && gapOf(task.state) > gap);
@@ -101,13 +111,15 @@ export class WorstCase {
 
   /** A slice of work: one round on the spheres, or one go at the next open check. `due` ends a round early. */
   step(gap: number, due: () => boolean = () => false): void {
-    if (this.gravity?.open(gap)) {
+    const firstRound = this.gravity?.entries.some((entry) => entry.found === Number.NEGATIVE_INFINITY);
+    const fresh = firstRound ? undefined : this.tasks.find((task) => this.isNew(task));
+    if (this.gravity?.open(gap) && !fresh) {
       this.gravity.round(gap, due);
       return;
     }
-    let pick: Task | null = null;
+    let pick: Task | null = fresh ?? null;
     for (const task of this.tasks) {
-      if (task.spent || gapOf(task.state) <= gap) continue;
+      if (fresh || task.spent || gapOf(task.state) <= gap) continue;
       if (!pick || this.urgency(task) < this.urgency(pick)) pick = task;
     }
     if (pick) {
@@ -178,6 +190,7 @@ export class WorstCase {
       this.chain,
       this.load,
       this.states.map((one) => one.check),
+      FIRST_ROUNDS,
     );
     state.bound = Math.min(state.bound, this.travel[this.states.indexOf(state)]!);
     state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);

@@ -8,8 +8,8 @@ import { type DutyPart, dutyPart, type PathMotion, pathMotion, pathSwings } from
 import { isRingParts, jointParts } from '../capacity/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { type Chain, type ChainCase, flattenArm, WRENCH } from '../mechanics/chain.ts';
-import { bearingDuty, dutySystem, NOTHING, type Run } from './dutyBearing.ts';
 import { sphereBounds, type TravelBounds } from '../mechanics/travelBounds.ts';
+import { bearingDuty, dutySystem, NOTHING, type Run } from './dutyBearing.ts';
 import { pathWear } from './dutyPath.ts';
 import type { DutyBearing, DutyResult, JointSegment, PartSegment, SegmentResult } from './dutyResult.ts';
 import { travelLoads } from './dutyTravel.ts';

@@ -1,5 +1,6 @@
 /** The engine's one door: what a person asks of an arm. */
 
+export type { TravelBounds } from '../mechanics/travelBounds.ts';
 export type { ArmCapacity, JoinOptions, PoseAssessment } from './assess.ts';
 export { armCapacity, assessPose, assessRows, checkOf, rowsWithVerdict } from './assess.ts';
 export type { FatigueOptions } from './assessFatigue.ts';
@@ -13,9 +14,9 @@ export type { Arrangement, CompareOptions, ComparePlan, CompareRefusal, Layout }
 export { planCompare, SPAN_STEPS } from './comparePlan.ts';
 export type { DutyOptions } from './duty.ts';
 export { dutyStudy } from './duty.ts';
-export type { TravelBounds } from '../mechanics/travelBounds.ts';
 export type * from './dutyResult.ts';
 export { dutyRows, WHOLE_ARM } from './dutyRows.ts';
+export { lastingRows } from './lastingRows.ts';
 export type { JointPlayResult, PlayOptions, PlayResult, TipResult } from './play.ts';
 export { playStudy, tipErrorAt } from './play.ts';
 export type { CasePose, SideMotion } from './playMotion.ts';

@@ -5,7 +5,8 @@
  *
  * Where two poses (or two places on a shaft, or two forms) tie, the slope is that of the one reported. The worst then has a corner: it rises at
  * least as fast as this slope says one way, and falls at most as fast the other way, because the pose reported remains a pose. So a slope
- * never promises more than a larger value, and one that promises a smaller value may be cut short by the other pose.
+ * never promises more than a larger value, and one that promises a smaller value may be cut short by the other pose. Where the value at the
+ * held pose has a corner itself, as when a bearing stands just on a step of its shaft, the slope is the mean of both sides and says so.
  */
 import type { Arm } from '../arm/arm.ts';
 import { withLinkMass, withPair } from '../arm/changeArm.ts';
@@ -25,12 +26,17 @@ export interface Slope {
   readonly now: number;
   /** Change of the check's value for one unit of the quantity, its unit per m, kg or rad. */
   readonly slope: number;
+  /** Whether the two sides differ, for the quantity stands just where the value bends or jumps: then `slope` is their mean. */
+  readonly corner: boolean;
   /** What a modest step would bring, as a share of the value: 10 % of a length or mass, 5° of travel; negative helps. */
   readonly gain: number;
 }
 
 /** Relative step of the central differences; values here are smooth rational functions, so the error is about its square. */
 const STEP = 1e-4;
+/** Difference of the slopes of both sides, as a share of their mean, that no smooth value has over so small a step; rounding of a value. */
+const CORNER = 0.02;
+const ROUNDING = 1e-12;
 const LENGTH_STEP = 0.1;
 const TRAVEL_STEP = (5 * Math.PI) / 180;
 /** How close to a limit counts as at it, rad. */
@@ -62,9 +68,12 @@ export function slopesOf(arm: Arm, row: CheckRow, checksOf: ChecksOf): readonly 
     const h = STEP * (now !== 0 ? Math.abs(now) : 1);
     // Nothing lies below zero: there the difference is one-sided.
     const low = now - h < 0 ? now : now - h;
-    const slope = (at(now + h) - at(low)) / (now + h - low);
+    const [up, here, down] = [at(now + h), at(now), at(low)];
+    const slope = (up - down) / (now + h - low);
     if (!Number.isFinite(slope) || Math.abs(slope) * h < 1e-13 * Math.abs(row.value)) return;
-    slopes.push({ what, name, now, slope, gain: (-Math.abs(slope) * step) / Math.abs(row.value) });
+    const bend = low < now ? Math.abs((up - here) / h - (here - down) / (now - low)) : 0;
+    const corner = bend > CORNER * Math.abs(slope) + (ROUNDING * Math.abs(here)) / h;
+    slopes.push({ what, name, now, slope, corner, gain: (-Math.abs(slope) * step) / Math.abs(row.value) });
   };
   arm.joints.forEach((joint, k) => {
     const { support, link } = joint;
@@ -110,6 +119,7 @@ function addTravel(arm: Arm, row: CheckRow, checksOf: ChecksOf, slopes: Slope[])
         name: chain.names[i]!,
         now: limit,
         slope,
+        corner: false,
         gain: (-Math.abs(slope) * TRAVEL_STEP) / Math.abs(row.value),
       });
     }

@@ -64,9 +64,9 @@ export class CaseSearch {
 
   /** Works until all gaps are closed or `due` says to pause; returns whether work is left. */
   work(due: () => boolean): boolean {
-    // One step at the least, so that whatever was asked for has been begun.
-    do this.worst.step(this.gap, due);
-    while (this.open && !due());
+    // However short the time, every check is looked at once: a row without a value says nothing.
+    do this.worst.step(this.gap, this.worst.begun ? due : () => false);
+    while (this.open && !(this.worst.begun && due()));
     return this.open;
   }
 

@@ -70,10 +70,7 @@ export const worstJob: JobKind<WorstShared, WorstInput, CaseWorst> = {
 };
 
 /** Gaps of the passes before the one asked for, and the share of the time by which each must end. */
-const PASSES = [
-  { gap: 0.1, until: 0.2 },
-  { gap: 0.02, until: 0.5 },
-] as const;
+const PASSES = [{ gap: 0.05, until: 0.3 }] as const;
 /** Least time of a part, ms: enough for first bounds. */
 const LEAST = 200;
 
