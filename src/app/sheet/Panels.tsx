@@ -3,6 +3,7 @@ import { Tab, TabList, TabPanel, Tabs } from 'react-aria-components';
 import { type PanelName, showPanel, useView } from '../store/viewStore.ts';
 import { ChecksPanel } from './ChecksPanel.tsx';
 import { JointPanel } from './JointPanel.tsx';
+import { MapPanel } from './MapPanel.tsx';
 import { SharesPanel } from './SharesPanel.tsx';
 import { WaysPanel } from './WaysPanel.tsx';
 import { WorstPanel } from './WorstPanel.tsx';
@@ -15,6 +16,7 @@ export function Panels() {
         <Tab id="joint">Joint</Tab>
         <Tab id="checks">Checks</Tab>
         <Tab id="shares">Shares</Tab>
+        <Tab id="map">Pose map</Tab>
         <Tab id="worst">Worst loads</Tab>
         <Tab id="ways">Two ways</Tab>
       </TabList>
@@ -26,6 +28,9 @@ export function Panels() {
       </TabPanel>
       <TabPanel id="shares" className="panel">
         <SharesPanel />
+      </TabPanel>
+      <TabPanel id="map" className="panel">
+        <MapPanel />
       </TabPanel>
       <TabPanel id="worst" className="panel">
         <WorstPanel />

@@ -4,6 +4,7 @@ import { useEffect, useMemo } from 'react';
 import { ConeGeometry, CylinderGeometry, Group, Matrix4, Mesh, MeshBasicMaterial, Quaternion, Vector3 } from 'three';
 import { rotateBack3 } from '../../math/vector.ts';
 import type { ArmOnSheet } from '../store/documentStore.ts';
+import { tipForceAt } from '../store/goTo.ts';
 import { loadsAt } from '../store/loads.ts';
 import { poseStore } from '../store/poseStore.ts';
 import { useTone } from '../store/tone.ts';
@@ -52,6 +53,10 @@ export function shownLoads(sheet: ArmOnSheet, pose: readonly number[], index: nu
     const way = new Vector3(...tip.forceUnit);
     if (tip.force === 'tool') way.applyMatrix4(new Matrix4().extractRotation(frames.links[chain.n - 1]!));
     shown.push({ label: 'tip', at: frames.tip, force: way.multiplyScalar(tip.magnitude) });
+  }
+  const free = tip?.force === 'any' ? tipForceAt(pose, name) : null;
+  if (tip && free) {
+    shown.push({ label: 'tip', at: frames.tip, force: new Vector3(...free).multiplyScalar(tip.magnitude) });
   }
   return shown;
 }

@@ -72,6 +72,9 @@ export function StageLetters({ sheet, index, scale }: StageLettersProps) {
         const text = `${load.label} ${shownQuantity(load.force.length(), 'force', units)}`;
         const anchor = way.x < -0.3 ? 'end' : way.x > 0.3 ? 'start' : 'middle';
         const letterAt = { x: head.x + way.x * 8, y: head.y + way.y * 10 + 4 };
+        for (let k = 0; k < 5 && taken.some((box) => meets(box, roomOf(text, letterAt.x, letterAt.y, anchor))); k++) {
+          letterAt.y += 14;
+        }
         taken.push(roomOf(text, letterAt.x, letterAt.y, anchor));
         setLetter(group, letterAt, text, anchor);
       }

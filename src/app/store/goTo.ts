@@ -1,9 +1,19 @@
 /** Going to where a check is worst: its joint, bearing, case and pose, everywhere on the sheet at once. */
-import type { CheckRow } from '../../studies/results.ts';
+import type { CheckRow, Triple } from '../../studies/results.ts';
 import { playTo, setPose } from './poseStore.ts';
 import { selectJoint, showCase } from './viewStore.ts';
 
+/** The row that was last gone to: at its pose and case, what the case left free stands as the row took it. */
+let gone: CheckRow | null = null;
+
+/** Unit vector (base frame) of a tip force that may point anywhere, as the row gone to took it; null away from its pose. */
+export function tipForceAt(pose: readonly number[], name: string): Triple | null {
+  if (!gone?.free?.tipForce || gone.case !== name || gone.pose.length !== pose.length) return null;
+  return gone.pose.every((angle, i) => Math.abs(angle - pose[i]!) < 1e-9) ? gone.free.tipForce : null;
+}
+
 export function goToWorst(row: CheckRow, play = true): void {
+  gone = row;
   selectJoint(row.jointIndex, row.bearing);
   showCase(row.case);
   if (play) playTo(row.pose);
