@@ -227,7 +227,9 @@ export function withParts(arm: Arm, seed: number): Arm {
       const { support } = joint;
       if (support?.arrangement !== 'clevis' && support?.arrangement !== 'cantilever') return joint;
       const diameter = random.between(0.015, 0.03);
-      const end = support.stationA + 0.5 * (support.stationB - support.stationA);
+      // Steps stand clear of bearings and hub, so that a small change of span moves nothing across one
+      const step = (part: number) => support.stationA + part * (support.stationB - support.stationA);
+      const [start, end] = [step(-0.1), step(0.37)];
       const shaft: Shaft = {
         diameter,
         bore: random.next() < 0.5 ? 0 : 0.4 * diameter,
@@ -236,8 +238,8 @@ export function withParts(arm: Arm, seed: number): Arm {
         finish: 'machined',
         sections: [
           {
-            from: Math.min(end, support.stationA),
-            to: Math.max(end, support.stationA),
+            from: Math.min(start, end),
+            to: Math.max(start, end),
             diameter: 0.9 * diameter,
             bore: 0,
             bendingFactor: 1.6,
