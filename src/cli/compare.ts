@@ -1,21 +1,18 @@
 /** `armload compare`: one joint on a clevis and on a cantilever. */
 import { compareTable, layoutTable, spanTable } from '../report/compareTables.ts';
-import { gridChoiceText } from '../report/gridText.ts';
 import { secondsText } from '../report/shown.ts';
 import { type CompareResult, compareArm, type LayoutResult } from '../studies/compareArm.ts';
 import { planCompare } from '../studies/comparePlan.ts';
 import { fromSI, toSI } from '../units/unit.ts';
-import { chooseCases } from './chooseCases.ts';
+import { chooseCases, onlyCases } from './chooseCases.ts';
 import { drawTable } from './drawTable.ts';
 import { EXIT, type ExitCode, UsageError } from './exit.ts';
-import { type GridOptions, gridChoice } from './gridChoice.ts';
 import { openArm } from './openArm.ts';
 import { print, printCaution, printJson, warn } from './output.ts';
 import { exitOf, rowObject } from './rowObjects.ts';
-import { runSweep } from './runSweep.ts';
-import { sweepText } from './sweep.ts';
+import { type ComparisonOptions, runComparison } from './runComparison.ts';
 
-export interface CompareOptions extends GridOptions {
+export interface CompareOptions extends ComparisonOptions {
   readonly joint: string;
   readonly case?: readonly string[];
   /** mm. */
@@ -24,15 +21,11 @@ export interface CompareOptions extends GridOptions {
   readonly overhang?: number;
   readonly side?: '+' | '-';
   readonly json?: boolean;
-  readonly workers?: number;
 }
 
-const METHOD =
-  'The load on the joint does not depend on how it is carried: one pass over the poses, every layout and span held against every joint load of it.';
-
 export async function compare(file: string, options: CompareOptions): Promise<ExitCode> {
-  const { arm, chain } = await openArm(file, options.json === true);
-  const cases = chooseCases(arm, options.case);
+  const opened = await openArm(file, options.json === true);
+  const { arm, chain } = onlyCases(opened, chooseCases(opened.arm, options.case));
   const metres = (mm: number | undefined) => (mm === undefined ? undefined : toSI(mm, 'mm'));
   const plan = planCompare(arm, chain, options.joint, {
     clevisSpan: metres(options.clevisSpan),
@@ -41,30 +34,31 @@ export async function compare(file: string, options: CompareOptions): Promise<Ex
     side: options.side,
   });
   if ('refused' in plan) throw new UsageError(plan.refused);
-  const { choice, poses } = gridChoice(chain, options);
-  const swept = await runSweep(arm, chain, { choice, cases, checks: plan.checks, poses, workers: options.workers });
-  const result = compareArm(plan, swept.rows);
+  const looked = await runComparison(arm, chain, plan, options);
+  if (looked.rows.length === 0) {
+    warn('stopped before there was anything to compare');
+    if (options.json) printJson(arm, { joint: plan.joint, partial: true });
+    return EXIT.interrupted;
+  }
+  const result = compareArm(plan, looked.rows);
   if (options.json) {
     printJson(arm, {
-      poses: swept.poses,
-      poses_done: swept.done,
-      partial: swept.partial,
-      seconds: swept.seconds,
-      method: METHOD,
+      ...looked.facts,
+      partial: looked.partial,
+      seconds: looked.seconds,
+      method: looked.method,
       ...resultObject(result),
     });
   } else {
-    const over = sweepText(swept, cases?.length ?? arm.cases.length);
-    print(`${arm.name}, joint "${result.joint}": clevis and cantilever over ${over}, ${gridChoiceText(choice)}\n`);
+    print(`${arm.name}, joint "${result.joint}": clevis and cantilever over ${looked.over}\n`);
     print(`${drawTable(layoutTable(result))}\n\nTaken: ${result.assumptions.join('; ')}.\n`);
     print(`${drawTable(compareTable(result))}\n\nratio: cantilever over clevis\n`);
-    print(`${drawTable(spanTable(result))}\n\n${METHOD}`);
-    print('A grid finds a bad pose; it does not show that there is none worse between its samples.');
-    warn(`swept in ${secondsText(swept.seconds)}`);
+    print(`${drawTable(spanTable(result))}\n\n${looked.method}`);
+    if (looked.partial) warn('stopped: PARTIAL, the best so far');
+    warn(`searched in ${secondsText(looked.seconds)}`);
     printCaution();
   }
-  if (swept.partial) return EXIT.interrupted;
-  return exitOf(swept.rows, false);
+  return looked.partial ? EXIT.interrupted : exitOf(looked.rows, false);
 }
 
 function millimetres(metres: number): number {

@@ -37,7 +37,7 @@ Examples:
   armload pose models/picking-arm.arm.json --at=0,30,-60,0,45
   armload sweep models/picking-arm.arm.json --samples 5
   armload worst models/swing-joint.arm.json
-  armload compare models/picking-arm.arm.json --joint elbow
+  armload compare models/picking-arm.arm.json --joint elbow --step 30
 
 Angles are degrees, one for each revolute joint from the ground to the tip. "armload <verb> --help" tells more.
 Exit codes: 0 all well; 1 a check is over its limit (with --strict also: not assessed); 2 the file is not valid;
@@ -69,16 +69,28 @@ A design aid: results are to be checked by a competent engineer.`,
     .option('--case <name>', 'only this load case; may be given again', collect)
     .option('--strict', STRICT_HELP);
 
-  const overGrid = (command: Command) =>
+  const overGrid = (command: Command, otherwise: string) =>
     command
       .option(
         '--step <degrees>',
         'largest step of the grid; each travel is divided evenly, both ends included',
         positive,
       )
-      .option('--samples <count>', 'samples of each joint in place of a step (default: 9)', wholeNumber(2, 1e6))
+      .option(
+        '--samples <count>',
+        `samples of each joint in place of a step (default: ${otherwise})`,
+        wholeNumber(2, 1e6),
+      )
       .option('--case <name>', 'only this load case; may be given again', collect)
       .option('--workers <count>', 'threads; the result is the same for any number', wholeNumber(1, 64));
+  const withProof = (command: Command) =>
+    command
+      .option(
+        '--gap <share>',
+        'gap between bound and found to be closed, a share of the bound (default: 0.001)',
+        positive,
+      )
+      .option('--seconds <time>', 'time allowed; the best so far is kept (default: 30)', positive);
 
   overGrid(
     verb(
@@ -87,34 +99,34 @@ A design aid: results are to be checked by a competent engineer.`,
       async (file, options) => (await import('./sweep.ts')).sweep(file, options),
       'armload sweep models/picking-arm.arm.json --step 45\n  armload sweep models/two-link.arm.json --samples 20 --each-case --json',
     ),
+    '9',
   )
     .option('--each-case', 'the worst case by case instead of over all cases')
     .option('--strict', STRICT_HELP);
 
-  verb(
-    'worst',
-    'The certified worst pose of every check: attained values, and bounds that nothing within travel exceeds.',
-    async (file, options) => (await import('./worst.ts')).worst(file, options),
-    'armload worst models/swing-joint.arm.json\n  armload worst models/two-link.arm.json --gap 0.01 --seconds 10',
+  withProof(
+    verb(
+      'worst',
+      'The certified worst pose of every check: attained values, and bounds that nothing within travel exceeds.',
+      async (file, options) => (await import('./worst.ts')).worst(file, options),
+      'armload worst models/swing-joint.arm.json\n  armload worst models/two-link.arm.json --gap 0.01 --seconds 10',
+    ),
   )
-    .option(
-      '--gap <share>',
-      'gap between bound and found to be closed, as a share of the bound (default: 0.001)',
-      positive,
-    )
-    .option('--seconds <time>', 'time allowed; the best so far is kept (default: 30)', positive)
     .option('--case <name>', 'only this load case; may be given again', collect)
     .option('--each-case', 'the worst case by case instead of over all cases')
     .option('--strict', STRICT_HELP)
     .option('--workers <count>', 'threads', wholeNumber(1, 64));
 
   overGrid(
-    verb(
-      'compare',
-      'One joint on a clevis and on a cantilever, its link and hub plane as they are.',
-      async (file, options) => (await import('./compare.ts')).compare(file, options as never),
-      'armload compare models/picking-arm.arm.json --joint elbow\n  armload compare models/two-link.arm.json --joint elbow --overhang 20 --cantilever-span 80',
+    withProof(
+      verb(
+        'compare',
+        'One joint on a clevis and on a cantilever, its link and hub plane as they are.',
+        async (file, options) => (await import('./compare.ts')).compare(file, options as never),
+        'armload compare models/picking-arm.arm.json --joint elbow --step 30\n  armload compare models/two-link.arm.json --joint elbow --overhang 20 --seconds 10',
+      ),
     ),
+    'no grid; the whole travel by proof',
   )
     .requiredOption('--joint <name>', 'the joint to compare')
     .option('--clevis-span <mm>', 'distance between the bearings of the clevis (default: as in the file)', positive)

@@ -1,8 +1,7 @@
 /** `armload sweep`: the worst of every check over a grid of poses. */
 import { gridChoiceText } from '../report/gridText.ts';
-import { countText, secondsText } from '../report/shown.ts';
+import { secondsText } from '../report/shown.ts';
 import { armCapacity, assessRows, byJoint } from '../studies/assess.ts';
-import type { SweepResult } from '../studies/results.ts';
 import { sweepChecks } from '../studies/sweepChecks.ts';
 import { chooseCases } from './chooseCases.ts';
 import { EXIT, type ExitCode } from './exit.ts';
@@ -12,6 +11,7 @@ import { print, printCaution, printJson, warn } from './output.ts';
 import { exitOf, jointObjects } from './rowObjects.ts';
 import { runSweep } from './runSweep.ts';
 import { rowTables } from './shownRows.ts';
+import { sweepText } from './sweepText.ts';
 
 export interface SweepOptions extends GridOptions {
   readonly case?: readonly string[];
@@ -50,10 +50,4 @@ export async function sweep(file: string, options: SweepOptions): Promise<ExitCo
   }
   if (result.partial) return EXIT.interrupted;
   return exitOf(rows, options.strict === true);
-}
-
-/** `2 809 poses in each of 3 cases`, and how far it came where it was stopped. */
-export function sweepText(result: Pick<SweepResult, 'poses' | 'done' | 'partial'>, cases: number): string {
-  const poses = `${countText(result.poses)} ${result.poses === 1 ? 'pose' : 'poses'}${cases > 1 ? ` in each of ${cases} cases` : ''}`;
-  return result.partial ? `PART of ${poses} (stopped after ${countText(result.done)})` : poses;
 }

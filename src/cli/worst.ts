@@ -13,6 +13,7 @@ import { print, printCaution, printJson, warn } from './output.ts';
 import { progressBar } from './progressBar.ts';
 import { armObjects, exitOf, jointObjects } from './rowObjects.ts';
 import { rowTables } from './shownRows.ts';
+import { withPatience } from './withPatience.ts';
 
 export interface WorstOptions {
   readonly gap?: number;
@@ -25,20 +26,6 @@ export interface WorstOptions {
 }
 
 const NOTHING_YET: WorstResult = { rows: [], eachCase: [], seconds: 0, certified: false, partial: true };
-
-/** How long a search that was told to stop may take to hand over, ms. */
-const PATIENCE = 1500;
-
-/** What the work gives; or, a while after the signal, null: a part that is slow to stop keeps nobody waiting. */
-async function withPatience<T>(work: Promise<T>, signal: AbortSignal): Promise<T | null> {
-  let timer: ReturnType<typeof setTimeout> | undefined;
-  const late = new Promise<null>((resolve) => {
-    signal.addEventListener('abort', () => {
-      timer = setTimeout(() => resolve(null), PATIENCE);
-    });
-  });
-  return Promise.race([work, late]).finally(() => clearTimeout(timer));
-}
 
 export async function worst(file: string, options: WorstOptions): Promise<ExitCode> {
   const opened = await openArm(file, options.json === true);

@@ -100,6 +100,33 @@ describe('armload compare', () => {
     expect(worst).toEqual([...worst].sort((a: number, b: number) => b - a));
   });
 
+  it('goes over the whole travel by proof where no grid is asked for: within the gap of `worst`, never below the grid', async () => {
+    const args = ['--case', 'hold the grinder', '--json'];
+    const proved = JSON.parse((await armload(['compare', model('two-link'), '--joint', 'elbow', ...args])).stdout);
+    expect(proved).toMatchObject({ certified: true, gap_asked: 0.001, partial: false });
+    const worst = JSON.parse((await armload(['worst', model('two-link'), ...args])).stdout);
+    const rows: Row[] = worst.joints.find((entry: { joint: string }) => entry.joint === 'elbow').checks;
+    const grid = await compare(model('two-link'), 'elbow', '--case', 'hold the grinder');
+    proved.cantilever.checks.forEach((row: Row & { bound: number }, k: number) => {
+      const direct = rows.find((r) => r.check === row.check && r.bearing === row.bearing)!;
+      expect(Math.abs(row.value - direct.value)).toBeLessThanOrEqual(0.001 * direct.value + 1e-9);
+      expect(row.bound).toBeGreaterThanOrEqual(grid.cantilever.checks[k].value - 1e-9);
+      expect(row.value).toBeGreaterThanOrEqual(grid.cantilever.checks[k].value * (1 - 1e-9) - 1e-9);
+    });
+    proved.spans.forEach((row: { clevis: { A: Row & { bound: number } } }, k: number) => {
+      expect(row.clevis.A.bound).toBeGreaterThanOrEqual(grid.spans[k].clevis.A.value - 1e-9);
+    });
+    const text = await armload(['compare', model('two-link'), '--joint', 'elbow', '--case', 'hold the grinder']);
+    expect(text.stdout).toContain('over the whole travel, 1 case');
+    expect(text.stdout).toContain('nothing within travel exceeds them by more than 0.1 %');
+  });
+
+  it('says of which values it is not proved', async () => {
+    const ran = await armload(['compare', model('two-link'), '--joint', 'elbow', '--gap', '1e-9', '--seconds', '1']);
+    expect(ran.code).toBe(0);
+    expect(ran.stdout).toMatch(/for \d+ of \d+ it is not proved that nothing within travel exceeds them/);
+  });
+
   it('prints tables that say what was taken and how', async () => {
     const ran = await armload(['compare', model('two-link'), '--joint', 'elbow', ...GRID]);
     expect(ran.code).toBe(0);
