@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import type { ArmFile, BearingFile, SegmentFile } from '../../src/arm/armFile.ts';
 import { flattenArm } from '../../src/mechanics/chain.ts';
-import { dutyStudy } from '../../src/studies/duty.ts';
 import { sphereBounds, type TravelBounds } from '../../src/mechanics/travelBounds.ts';
+import { dutyStudy } from '../../src/studies/duty.ts';
 import type { DutyBearing, DutyResult } from '../../src/studies/dutyResult.ts';
 import { dutyRows } from '../../src/studies/dutyRows.ts';
 import { armOf, BALL, G, sinePath, spit, turnPath } from './smallArms.ts';
