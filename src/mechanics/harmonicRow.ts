@@ -22,6 +22,9 @@ export interface RowSamples {
 }
 
 export class HarmonicRow {
+  /** Index of the row's first pose, and the bound last found: numbers handed from call to call would be an object each. */
+  readonly index: Flat = new Float64Array(1);
+  private readonly most: Flat = new Float64Array(1);
   private readonly table: FormTable;
   private readonly load: NestedCase;
   private readonly joint: number;
@@ -46,18 +49,18 @@ export class HarmonicRow {
     pairLoad(load, joint, u, uAt, Y, yAt + 2 * width, false, w, 2 * WRENCH);
   }
 
-  /** Offers the samples of the row to check c; `index` is that of the row's first pose. */
-  offer(c: number, samples: RowSamples, index: number, leaders: Leaders): void {
-    const bound = this.bound(c);
-    const cut = leaders.best[c]! - leaders.tie[c]!;
-    if (bound < cut || beaten(leaders, c, bound, index)) return;
+  /** Offers the samples of the row to check c. */
+  offer(c: number, samples: RowSamples, leaders: Leaders): void {
+    this.bound(c);
+    const bound = this.most[0]!;
+    if (bound < leaders.best[c]! - leaders.tie[c]! || beaten(leaders, c, bound, this.index[0]!)) return;
     const { table } = this;
-    if (table.start[c + 1]! === table.start[c]! + 1 && table.ranged[c] === 0) this.single(c, samples, index, leaders);
-    else this.several(c, samples, index, leaders);
+    if (table.start[c + 1]! === table.start[c]! + 1 && table.ranged[c] === 0) this.single(c, samples, leaders);
+    else this.several(c, samples, leaders);
   }
 
   /** Bound of check c over any last angle; fills `y`. */
-  private bound(c: number): number {
+  private bound(c: number): void {
     const { table, w, y } = this;
     const { factor, constant } = table;
     const first = table.start[c]!;
@@ -105,11 +108,11 @@ export class HarmonicRow {
       if (ranged && (table.torqueTo[f]! < w[5]! - reach || table.torqueFrom[f]! > w[5]! + reach)) continue;
       if (own > bound) bound = own;
     }
-    return bound;
+    this.most[0] = bound;
   }
 
   /** A check of one form: squares, until one matters, where it is a norm alone. */
-  private single(c: number, samples: RowSamples, index: number, leaders: Leaders): void {
+  private single(c: number, samples: RowSamples, leaders: Leaders): void {
     const { y, table } = this;
     const { turns, cos, sin, offset } = samples;
     const rows = table.rows[table.start[c]!]!;
@@ -123,12 +126,12 @@ export class HarmonicRow {
         square += value * value;
       }
       const value = Math.sqrt(square) + y[line]! + y[line + 1]! * c1 + y[line + 2]! * s1;
-      if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, index + offset[k]!);
+      if (!(value < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, value, this.index[0]! + offset[k]!);
     }
   }
 
   /** A check of several forms: the largest of those that hold at the torque of the sample. */
-  private several(c: number, samples: RowSamples, index: number, leaders: Leaders): void {
+  private several(c: number, samples: RowSamples, leaders: Leaders): void {
     const { y, w, table } = this;
     const { turns, cos, sin, offset } = samples;
     const first = table.start[c]!;
@@ -151,7 +154,7 @@ export class HarmonicRow {
         const value = Math.sqrt(square) + y[line]! + y[line + 1]! * c1 + y[line + 2]! * s1;
         if (value > most) most = value;
       }
-      if (!(most < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, most, index + offset[k]!);
+      if (!(most < leaders.best[c]! - leaders.tie[c]!)) offer(leaders, c, most, this.index[0]! + offset[k]!);
     }
   }
 }

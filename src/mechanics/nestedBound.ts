@@ -103,6 +103,8 @@ function rowValue(factor: Flat, o: number, w: Flat): number {
 }
 
 export class NestedBound {
+  /** Where `outward` and `both` leave the bound: a number handed back from call to call would be an object each. */
+  readonly result: Flat = new Float64Array(1);
   /** Sizes of the inboard vectors. */
   readonly size: Flat;
   private readonly table: FormTable;
@@ -158,13 +160,13 @@ export class NestedBound {
   /**
    * Bound of check c at a known u and Y within `radius` [blocks] of `Y`, whose joint load is w. -∞ only where no form holds.
    */
-  outward(c: number, w: Flat, u: Flat, uAt: number, Y: Flat, yAt: number, radius: Flat): number {
-    return this.bound(c, w, u, uAt, null, Y, yAt, radius);
+  outward(c: number, w: Flat, u: Flat, uAt: number, Y: Flat, yAt: number, radius: Flat): void {
+    this.bound(c, w, u, uAt, null, Y, yAt, radius);
   }
 
   /** As `outward`, with u within `spread` [pairs] of `u`, at its length. */
-  both(c: number, w: Flat, u: Flat, spread: Flat, Y: Flat, yAt: number, radius: Flat): number {
-    return this.bound(c, w, u, 0, spread, Y, yAt, radius);
+  both(c: number, w: Flat, u: Flat, spread: Flat, Y: Flat, yAt: number, radius: Flat): void {
+    this.bound(c, w, u, 0, spread, Y, yAt, radius);
   }
 
   private bound(
@@ -176,7 +178,7 @@ export class NestedBound {
     Y: Flat,
     yAt: number,
     radius: Flat,
-  ): number {
+  ): void {
     const { table, load, turned } = this;
     const { factor, constant } = table;
     const { pairs, blocks } = load;
@@ -240,7 +242,7 @@ export class NestedBound {
       if (table.linear[f] === 1) own += this.line(c, f, w, u, uAt, spread, Y, yAt, radius);
       if (own > bound) bound = own;
     }
-    return bound;
+    this.result[0] = bound;
   }
 
   /** The norm with u free within `spread` and the tip force free as well. */

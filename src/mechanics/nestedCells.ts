@@ -141,28 +141,24 @@ export class NestedCells {
     const { centre, spread } = this;
     const size = this.bound.size[p]!;
     const face = Math.floor(cell / (edge * edge));
-    const i = Math.floor(cell / edge) % edge;
-    const j = cell % edge;
+    const x = (2 * (Math.floor(cell / edge) % edge) + 1) / edge - 1;
+    const y = (2 * (cell % edge) + 1) / edge - 1;
     const axis = face >> 1;
-    const sign = face & 1 ? -1 : 1;
-    const point = (a: number, b: number): [number, number, number] => {
-      const [u, v] = [(2 * (i + a)) / edge - 1, (2 * (j + b)) / edge - 1];
-      const length = Math.sqrt(1 + u * u + v * v);
-      const out: [number, number, number] = [0, 0, 0];
-      out[axis] = sign / length;
-      out[(axis + 1) % 3] = u / length;
-      out[(axis + 2) % 3] = v / length;
-      return out;
-    };
-    const middle = point(0.5, 0.5);
+    const length = Math.sqrt(1 + x * x + y * y);
+    centre[3 * p + axis] = ((face & 1 ? -1 : 1) * size) / length;
+    centre[3 * p + ((axis + 1) % 3)] = (size * x) / length;
+    centre[3 * p + ((axis + 2) % 3)] = (size * y) / length;
     let most = 0;
     for (let k = 0; k < 4; k++) {
-      const corner = point(k & 1, k >> 1);
-      most = Math.max(most, Math.hypot(corner[0] - middle[0], corner[1] - middle[1], corner[2] - middle[2]));
+      const cx = x + (k & 1 ? 1 : -1) / edge;
+      const cy = y + (k & 2 ? 1 : -1) / edge;
+      // |a - b|² = 2 - 2 a·b of the unit vectors
+      const along = (1 + x * cx + y * cy) / (length * Math.sqrt(1 + cx * cx + cy * cy));
+      const apart = Math.sqrt(Math.max(0, 2 - 2 * along));
+      if (apart > most) most = apart;
     }
-    for (let k = 0; k < 3; k++) centre[3 * p + k] = size * middle[k]!;
     // a direction on the edge between two cells may be counted to either
-    spread[p] = size * most * (1 + 1e-12);
+    spread[p] = size * (most * (1 + 1e-9) + 1e-12);
   }
 
   private examine(cell: number, c: number, edge: number): boolean {
@@ -199,6 +195,7 @@ export class NestedCells {
 
   private reaches(c: number, Y: Flat, at: number, radius: Flat): boolean {
     pairLoad(this.load, this.table.joint[c]!, this.centre, 0, Y, at, true, this.w, 0);
-    return !(this.bound.both(c, this.w, this.centre, this.spread, Y, at, radius) < this.floor[c]!);
+    this.bound.both(c, this.w, this.centre, this.spread, Y, at, radius);
+    return !(this.bound.result[0]! < this.floor[c]!);
   }
 }

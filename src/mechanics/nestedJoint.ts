@@ -34,6 +34,8 @@ export class NestedJoint {
   private readonly centres: Flat;
   private readonly u: Flat;
   private readonly w = new Float64Array(WRENCH);
+  /** Index of the first pose of the inboard choice [0] and of the node in hand at level ℓ [ℓ + 1]. */
+  private readonly index: Flat;
   private uAt = 0;
 
   /**
@@ -66,6 +68,7 @@ export class NestedJoint {
     this.active = new Int32Array((tree.levels + 2) * own.length);
     this.frames = new Float64Array(tree.frameSize * (tree.levels + 1));
     this.centres = new Float64Array(load.width * (tree.levels + 1));
+    this.index = new Float64Array(tree.levels + 1);
     this.row = new HarmonicRow(table, load, joint);
     this.rowParts = new Float64Array(3 * load.width);
     this.leaf = new Float64Array(load.width);
@@ -78,6 +81,7 @@ export class NestedJoint {
   at(uAt: number, index: number, leaders: Leaders): void {
     const { checks, active, alone, cells, tree, load, u, w } = this;
     this.uAt = uAt;
+    this.index[0] = index;
     const cell = cells ? cells.cellOf(u, uAt) : 0;
     let open = 0;
     let loaded = false;
@@ -91,87 +95,79 @@ export class NestedJoint {
         continue;
       }
       this.bound.direct(c, u, uAt);
-      const bound = this.bound.outward(c, w, u, uAt, tree.rootCentre, 0, tree.rootRadius);
-      if (!beaten(leaders, c, bound, index)) active[open++] = c;
+      this.bound.outward(c, w, u, uAt, tree.rootCentre, 0, tree.rootRadius);
+      if (!this.isBeaten(c, 0, leaders)) active[open++] = c;
     }
     if (open === 0) return;
-    if (tree.levels === 0) this.offerRow(tree.rows!, 0, 0, open, index, leaders);
-    else this.tabulated(0, 0, 0, open, index, leaders);
+    if (tree.levels === 0) this.offerRow(tree.rows!, 0, 0, open, 0, leaders);
+    else this.tabulated(0, 0, 0, open, leaders);
   }
 
   /** Children of node `parent` of a tabulated level; the checks still open start at `from` in `active`. */
-  private tabulated(level: number, parent: number, from: number, count: number, index: number, leaders: Leaders): void {
-    const { tree, load } = this;
+  private tabulated(level: number, parent: number, from: number, count: number, leaders: Leaders): void {
+    const { tree, load, index } = this;
     const turns = tree.turns[level]!;
     const centre = tree.centre[level]!;
     const offset = tree.offset[level]!;
     for (let e = parent * turns; e < (parent + 1) * turns; e++) {
-      const at = index + offset[e]!;
-      const open = this.stillOpen(level, centre, load.width * e, from, count, at, leaders);
+      index[level + 1] = index[0]! + offset[e]!;
+      const open = this.stillOpen(level, centre, load.width * e, from, count, leaders);
       if (open === 0) continue;
-      if (level + 1 < tree.tabulated) this.tabulated(level + 1, e, from + count, open, index, leaders);
-      else if (tree.rows) this.offerRow(tree.rows, 3 * load.width * e, from + count, open, at, leaders);
-      else this.deep(level + 1, tree.frames, tree.frameSize * e, from + count, open, at, leaders);
+      if (level + 1 < tree.tabulated) this.tabulated(level + 1, e, from + count, open, leaders);
+      else if (tree.rows) this.offerRow(tree.rows, 3 * load.width * e, from + count, open, level + 1, leaders);
+      else this.deep(level + 1, tree.frames, tree.frameSize * e, from + count, open, leaders);
     }
   }
 
   /** Children of a node in the making, below the tabulated levels. */
-  private deep(
-    level: number,
-    parent: Flat,
-    parentAt: number,
-    from: number,
-    count: number,
-    index: number,
-    leaders: Leaders,
-  ): void {
-    const { tree, load, frames, centres, rowParts } = this;
+  private deep(level: number, parent: Flat, parentAt: number, from: number, count: number, leaders: Leaders): void {
+    const { tree, load, frames, centres, rowParts, index } = this;
     if (level === tree.levels) {
       tree.row(parent, parentAt, rowParts, 0);
-      this.offerRow(rowParts, 0, from, count, index, leaders);
+      this.offerRow(rowParts, 0, from, count, level, leaders);
       return;
     }
     const own = tree.frameSize * level;
     const at = load.width * level;
+    const offset = tree.stepOffset(level);
     for (let k = 0; k < tree.turns[level]!; k++) {
       tree.step(level, k, parent, parentAt, frames, own, centres, at);
-      const here = index + tree.stepOffset(level, k);
-      const open = this.stillOpen(level, centres, at, from, count, here, leaders);
-      if (open > 0) this.deep(level + 1, frames, own, from + count, open, here, leaders);
+      index[level + 1] = index[level]! + offset[k]!;
+      const open = this.stillOpen(level, centres, at, from, count, leaders);
+      if (open > 0) this.deep(level + 1, frames, own, from + count, open, leaders);
     }
   }
 
-  private stillOpen(
-    level: number,
-    Y: Flat,
-    at: number,
-    from: number,
-    count: number,
-    index: number,
-    leaders: Leaders,
-  ): number {
+  /** Hands on the checks that a node of a level may matter to; how many. */
+  private stillOpen(level: number, Y: Flat, at: number, from: number, count: number, leaders: Leaders): number {
     const { active, tree, w, u, uAt } = this;
     const radius = tree.radius[level]!;
     pairLoad(this.load, this.joint, u, uAt, Y, at, true, w, 0);
     let open = 0;
     for (let k = from; k < from + count; k++) {
       const c = active[k]!;
-      const bound = this.bound.outward(c, w, u, uAt, Y, at, radius);
-      if (bound < leaders.best[c]! - leaders.tie[c]! || beaten(leaders, c, bound, index)) continue;
-      active[from + count + open++] = c;
+      this.bound.outward(c, w, u, uAt, Y, at, radius);
+      if (!this.isBeaten(c, level + 1, leaders)) active[from + count + open++] = c;
     }
     return open;
   }
 
-  /** Offers the samples of a row (its parts at `at`) to the checks still open. */
-  private offerRow(parts: Flat, at: number, from: number, count: number, index: number, leaders: Leaders): void {
+  /** Whether what was bounded last, at poses from `index[place]` on, cannot matter to check c. */
+  private isBeaten(c: number, place: number, leaders: Leaders): boolean {
+    const bound = this.bound.result[0]!;
+    return bound < leaders.best[c]! - leaders.tie[c]! || beaten(leaders, c, bound, this.index[place]!);
+  }
+
+  /** Offers the samples of a row (its parts at `at`) to the checks still open; its first pose stands at `index[place]`. */
+  private offerRow(parts: Flat, at: number, from: number, count: number, place: number, leaders: Leaders): void {
     const { row, tree, active, u, uAt } = this;
     if (this.exact) {
-      this.offerEach(parts, at, from, count, index, leaders);
+      this.offerEach(parts, at, from, count, this.index[place]!, leaders);
       return;
     }
     row.set(u, uAt, parts, at);
-    for (let k = from; k < from + count; k++) row.offer(active[k]!, tree.samples, index, leaders);
+    row.index[0] = this.index[place]!;
+    for (let k = from; k < from + count; k++) row.offer(active[k]!, tree.samples, leaders);
   }
 
   /** The same sample by sample, where a case leaves something free at a pose. */
@@ -191,7 +187,8 @@ export class NestedJoint {
     const floor = leaders.best[c]! - leaders.tie[c]!;
     let value: number;
     if (exact) {
-      if (beaten(leaders, c, this.bound.outward(c, w, this.u, uAt, Y, at, this.none), index)) return;
+      this.bound.outward(c, w, this.u, uAt, Y, at, this.none);
+      if (beaten(leaders, c, this.bound.result[0]!, index)) return;
       exact.set(index);
       if (beaten(leaders, c, exact.bound(c, floor), index)) return;
       value = exact.value(c, floor);

@@ -19,7 +19,7 @@ import { type NestedCase, nestedCase } from './nestedCase.ts';
 import { type FormTable, feelsLoad, formTable } from './nestedForms.ts';
 import { NestedJoint } from './nestedJoint.ts';
 import { type Stage, stagesOf } from './nestedStages.ts';
-import { NestedTree } from './nestedTree.ts';
+import { NestedTree, TreeMemory } from './nestedTree.ts';
 
 /** Blocks of cells along an edge of the cube at most, for one and for two inboard vectors; a cell should serve so many directions. */
 const MOST_BLOCKS = [0, 32, 2] as const;
@@ -37,6 +37,7 @@ export class NestedSweep {
   /** Joints as last made, and the outboard samples they were made for: boxes mostly differ inboard. */
   private readonly made: (NestedJoint | null)[];
   private readonly madeFor: string[];
+  private readonly memory: readonly TreeMemory[];
   private readonly tmp = new Float64Array(3);
   // The box under way.
   private stages: readonly Stage[] = [];
@@ -62,6 +63,7 @@ export class NestedSweep {
     this.exact = hasFree(load) ? new PoseValue(chain, load, checks, grid) : null;
     this.made = new Array(chain.n).fill(null);
     this.madeFor = new Array(chain.n).fill('');
+    this.memory = Array.from({ length: chain.n }, () => new TreeMemory());
     const stages = stagesOf(
       grid,
       new Float64Array(chain.n),
@@ -121,7 +123,7 @@ export class NestedSweep {
     for (let j = i; j < chain.n; j++) key += `${low[j]}-${high[j]} `;
     const known = this.made[i];
     if (known && this.madeFor[i] === key) return known;
-    const tree = new NestedTree(chain, load, stages, balls, s, directions);
+    const tree = new NestedTree(chain, load, stages, balls, s, directions, this.memory[i]!);
     const joint = new NestedJoint(table, load, i, tree, this.u, this.exact, this.floor, this.cellBlocks[i]!);
     this.made[i] = joint;
     this.madeFor[i] = key;

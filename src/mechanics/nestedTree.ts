@@ -18,6 +18,20 @@ const NODES_A_DIRECTION = 16;
 /** A node in the making: rotation to housing frame i [9], where the turns made stand there [3], Y so far [width]. */
 const AT = { rotation: 0, reach: 9, sum: 12 } as const;
 
+/** Arrays that one joint's trees take over from one another, box after box. What they hold is written anew. */
+export class TreeMemory {
+  private readonly held = new Map<string, Float64Array>();
+
+  /** At least `size` numbers. */
+  take(name: string, size: number): Float64Array {
+    const known = this.held.get(name);
+    if (known && known.length >= size) return known;
+    const made = new Float64Array(size);
+    this.held.set(name, made);
+    return made;
+  }
+}
+
 export class NestedTree {
   /** Levels above the row; how many of them are tabulated. */
   readonly levels: number;
@@ -43,10 +57,14 @@ export class NestedTree {
   private readonly stages: readonly Stage[];
   private readonly balls: NestedBalls;
   private readonly start: number;
+  private readonly memory: TreeMemory;
   private readonly turned = new Float64Array(9);
   private readonly tmp = new Float64Array(6);
 
-  /** Tree of the joint whose first stage is `start`; `directions`: how many inboard choices will meet it. */
+  /**
+   * Tree of the joint whose first stage is `start`; `directions`: how many inboard choices will meet it. The trees that used `memory`
+   * before are of no more use.
+   */
   constructor(
     chain: Chain,
     load: NestedCase,
@@ -54,12 +72,14 @@ export class NestedTree {
     balls: NestedBalls,
     start: number,
     directions: number,
+    memory: TreeMemory,
   ) {
     this.chain = chain;
     this.load = load;
     this.stages = stages;
     this.balls = balls;
     this.start = start;
+    this.memory = memory;
     this.levels = stages.length - start - 1;
     const { blocks, width } = load;
     this.rootCentre = balls.outCentre.slice(width * start, width * (start + 1));
@@ -86,7 +106,7 @@ export class NestedTree {
 
   private tabulateRows(nodes: number): Float64Array {
     const size = 3 * this.load.width;
-    const rows = new Float64Array(size * nodes);
+    const rows = this.memory.take('rows', size * nodes);
     for (let e = 0; e < nodes; e++) this.row(this.frames, this.frameSize * e, rows, size * e);
     return rows;
   }
@@ -154,14 +174,14 @@ export class NestedTree {
   }
 
   private tabulate(level: number, parents: number): void {
-    const { load, frameSize, stages, start } = this;
+    const { load, frameSize, stages, start, memory } = this;
     const turns = this.turns[level]!;
     const nodes = parents * turns;
     const before = this.frames;
     const offsets = level === 0 ? null : this.offset[level - 1]!;
-    const frames = new Float64Array(frameSize * nodes);
-    const centre = new Float64Array(load.width * nodes);
-    const offset = new Float64Array(nodes);
+    const frames = memory.take(`frames ${level}`, frameSize * nodes);
+    const centre = memory.take(`centre ${level}`, load.width * nodes);
+    const offset = memory.take(`offset ${level}`, nodes);
     const stage = stages[start + level]!;
     for (let p = 0; p < parents; p++) {
       for (let k = 0; k < turns; k++) {
@@ -175,9 +195,9 @@ export class NestedTree {
     this.offset.push(offset);
   }
 
-  /** What turn k of a level adds to the index. */
-  stepOffset(level: number, k: number): number {
-    return this.stages[this.start + level]!.offset[k]!;
+  /** What each turn of a level adds to the index. */
+  stepOffset(level: number): Float64Array {
+    return this.stages[this.start + level]!.offset;
   }
 
   /** Makes the node of turn k below `from`: the node in the making at `to`, its centre at `at`. */
