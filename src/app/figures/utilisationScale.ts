@@ -3,7 +3,8 @@
  * above 1 a hue of its own with a hatch. What is not rated has no colour at all: an outline and a sparse hatch.
  */
 import { scaleLinear } from 'd3-scale';
-import type { Verdict } from '../../studies/results.ts';
+import type { Governing } from '../../studies/assessGoverning.ts';
+import type { CheckRow, Verdict } from '../../studies/results.ts';
 
 export type SheetTone = 'paper' | 'night';
 
@@ -24,15 +25,26 @@ const ramps = {
 export type Standing = 'within' | 'open' | 'over' | 'unrated';
 
 export interface Held {
-  readonly utilisation: number | null;
   readonly verdict: Verdict | null;
+  /** What is attained over the allowable; null where there is nothing to hold it against. */
+  readonly found: number | null;
+  /** What nothing exceeds over the allowable: the same, or more while a proof is under way. */
+  readonly most: number | null;
+}
+
+/** A row, or the governing check of a part, as it is shown against its limit. */
+export function heldOf(of: CheckRow | Governing | null | undefined): Held | null {
+  if (!of) return null;
+  const row = 'row' in of ? of.row : of;
+  const attained = row?.allowable ? row.value / row.allowable : null;
+  return { verdict: of.verdict, most: of.utilisation, found: attained ?? of.utilisation };
 }
 
 /** Only a verdict of `pass` is shown as within; what is above 1 or not a number never is. */
 export function standing(held: Held | null | undefined): Standing {
-  if (!held || held.utilisation === null) return held?.verdict === 'over' ? 'over' : 'unrated';
-  if (held.verdict === 'over' || !(held.utilisation <= 1)) return 'over';
-  return held.verdict === 'pass' ? 'within' : 'open';
+  if (!held || held.found === null) return held?.verdict === 'over' ? 'over' : 'unrated';
+  if (held.verdict === 'over' || !(held.found <= 1)) return 'over';
+  return held.verdict === 'pass' && held.most !== null && held.most <= 1 ? 'within' : 'open';
 }
 
 /** Ink of a utilisation of 0 to 1, as `rgb(r, g, b)`: a form that CSS, SVG and three all read. */
@@ -44,9 +56,9 @@ export function utilisationColour(utilisation: number, tone: SheetTone): string 
 export function standingFill(held: Held | null | undefined, tone: SheetTone): { fill: string; over: string | null } {
   switch (standing(held)) {
     case 'within':
-      return { fill: utilisationColour(held!.utilisation!, tone), over: null };
+      return { fill: utilisationColour(held!.found!, tone), over: null };
     case 'open':
-      return { fill: utilisationColour(held!.utilisation!, tone), over: 'url(#hatch-unrated)' };
+      return { fill: utilisationColour(held!.found!, tone), over: 'url(#hatch-unrated)' };
     case 'over':
       return { fill: 'url(#hatch-over)', over: null };
     case 'unrated':

@@ -3,7 +3,7 @@ import { poseText } from '../../report/shown.ts';
 import { type CheckRow, isMissing } from '../../studies/results.ts';
 import { SHOWN_UNITS } from '../../units/format.ts';
 import { utilisationText } from '../figures/UtilisationBar.tsx';
-import { standing } from '../figures/utilisationScale.ts';
+import { heldOf, standing } from '../figures/utilisationScale.ts';
 import { useArm } from '../store/documentStore.ts';
 import { goToWorst } from '../store/goTo.ts';
 import { usePoseRows } from '../store/governing.ts';
@@ -76,8 +76,8 @@ function CheckLine({ row, now }: { row: CheckRow; now: CheckRow | undefined }) {
       <td className="number">
         <Value value={row.allowable ?? undefined} unit={row.unit} />
       </td>
-      <td className={`number of-allowable ${row.verdict === null ? '' : standing(row)}`}>
-        {row.verdict === null ? 'told only' : utilisationText(row)}
+      <td className={`number of-allowable ${row.verdict === null ? '' : standing(heldOf(row))}`}>
+        {row.verdict === null ? 'told only' : utilisationText(heldOf(row))}
       </td>
       <td className="check-words">
         {row.pose.length > 0 && (

@@ -1,7 +1,7 @@
 /** Each bearing of a joint and its shaft: what it is, how far it is used, which check governs, and what stays open. */
 import type { Bearing, Joint } from '../../arm/arm.ts';
 import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
-import { standing } from '../figures/utilisationScale.ts';
+import { heldOf, standing } from '../figures/utilisationScale.ts';
 import type { ArmOnSheet } from '../store/documentStore.ts';
 import { goToWorst } from '../store/goTo.ts';
 import { governed, useGoverning, usePoseRows } from '../store/governing.ts';
@@ -26,6 +26,7 @@ export function GoverningLines({ sheet, at }: { sheet: ArmOnSheet; at: number })
 function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; part: Part }) {
   const worst = useGoverning(at, part);
   const now = governed(usePoseRows()).get(`${at} ${part}`);
+  const held = heldOf(worst);
   const row = worst?.row;
   const open = worst?.open ?? [];
   return (
@@ -34,8 +35,8 @@ function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; par
       <span className="part-size" title={sizeOf(sheet, sheet.arm.joints[at]!, part)}>
         {sizeOf(sheet, sheet.arm.joints[at]!, part)}
       </span>
-      <UtilisationBar held={worst ?? null} now={now?.utilisation ?? null} />
-      <span className={`used ${standing(worst)}`}>{utilisationText(worst ?? null)}</span>
+      <UtilisationBar held={held} now={now?.utilisation ?? null} />
+      <span className={`used ${standing(held)}`}>{utilisationText(held)}</span>
       <span className="why">
         {row ? (
           <button type="button" className="go" onClick={() => goToWorst(row)}>

@@ -6,7 +6,7 @@ import { JointSection } from '../figures/JointSection.tsx';
 import { type SectionShape, sectionShape } from '../figures/sectionGeometry.ts';
 import { THUMB } from '../figures/thumbnail.ts';
 import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
-import { standingFill } from '../figures/utilisationScale.ts';
+import { heldOf, standingFill } from '../figures/utilisationScale.ts';
 import type { ArmOnSheet } from '../store/documentStore.ts';
 import { goToWorst } from '../store/goTo.ts';
 import { governed, governingOf, useGoverning, usePoseRows } from '../store/governing.ts';
@@ -70,7 +70,7 @@ function Thumbnail({ sheet, index, scale, rows }: JointCellProps) {
         shape={shape}
         view={{ scale, ...centred(sectionShape(joint.support, null, sheet.arm.bearings), scale) }}
         small
-        fill={(name) => standingFill(governingOf(rows, index, name), tone)}
+        fill={(name) => standingFill(heldOf(governingOf(rows, index, name)), tone)}
       />
     </svg>
   );
@@ -139,7 +139,7 @@ function BearingLine({ joint, index, name, row }: BearingLineProps) {
   const quantity = name === 'ring' ? 'moment' : 'force';
   const unit = SHOWN_UNITS[units][quantity];
   const value = row ? shownNumber(row.value, quantity, units) : '–';
-  const held = worst ?? null;
+  const held = heldOf(worst);
   const aim = worst?.row ?? row;
   const words = row
     ? `Worst ${name === 'ring' ? 'moment' : 'radial load'} of ${joint}; utilisation ${utilisationText(held)}: ${worst?.why ?? 'nothing to hold it against'}${openText(worst)}. Go to its worst pose`

@@ -10,7 +10,7 @@ import { JointSection, type SectionView } from '../figures/JointSection.tsx';
 import { ShaftLinesFigure } from '../figures/ShaftLinesFigure.tsx';
 import { type SectionShape, sectionShape } from '../figures/sectionGeometry.ts';
 import { useSize } from '../figures/useSize.ts';
-import { standingFill } from '../figures/utilisationScale.ts';
+import { heldOf, standingFill } from '../figures/utilisationScale.ts';
 import { type ArmOnSheet, armOf, useDocument } from '../store/documentStore.ts';
 import { shaftLinesAt } from '../store/engine.ts';
 import { governingOf, usePoseRows } from '../store/governing.ts';
@@ -83,7 +83,7 @@ function SupportedDrawing({
             shape={shape}
             view={view}
             chosen={chosen}
-            fill={(name) => standingFill(governingOf(rows, at, name), tone)}
+            fill={(name) => standingFill(heldOf(governingOf(rows, at, name)), tone)}
           />
           <HubPlane shape={shape} view={view} />
           {support.arrangement !== 'ring' && <PairDimensions at={at} support={support} shape={shape} view={view} />}
