@@ -36,10 +36,11 @@ export function SweptTrace({ sheet }: { sheet: ArmOnSheet }) {
     [trace],
   );
   useEffect(() => {
-    const ends = 2 * sheet.chain.n;
-    trace.geometry.setDrawRange(0, ends * Math.round(share * POSES));
+    // Whole poses only: six numbers a line, a line a joint.
+    const drawn = Math.round((share * lines.length) / (6 * sheet.chain.n));
+    trace.geometry.setDrawRange(0, 2 * sheet.chain.n * drawn);
     invalidate();
-  }, [trace, share, sheet, invalidate]);
+  }, [trace, share, sheet, lines, invalidate]);
   return <primitive object={trace.segments} />;
 }
 
@@ -49,7 +50,9 @@ function linesOf({ chain }: ArmOnSheet, step: number): number[] {
   if (!outcome.ok) return [];
   const pose = new Float64Array(chain.n);
   const lines: number[] = [];
-  for (let k = 0; k < POSES; k++) {
+  // A coarse grid has few poses: drawn over and over they would stand out.
+  const count = Math.min(POSES, Math.ceil(outcome.grid.poses / 4));
+  for (let k = 0; k < count; k++) {
     poseAt(outcome.grid, Math.floor(((k * GOLDEN) % 1) * outcome.grid.poses), pose);
     const points = outlinePoints(chain, [...pose]);
     for (let i = 1; i < points.length; i++) lines.push(...points[i - 1]!.toArray(), ...points[i]!.toArray());
