@@ -9,9 +9,9 @@
 import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
 import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
-import { pairLoad } from './nestedBound.ts';
 import type { NestedCase } from './nestedCase.ts';
 import { type FormTable, LINE, ROWS } from './nestedForms.ts';
+import { pairLoad } from './nestedLoad.ts';
 
 /** Samples of a row: cos and sin of each angle, and what it adds to the index. */
 export interface RowSamples {

@@ -1,106 +1,19 @@
 /**
- * Joint load and checks where the inboard vectors u and the outboard numbers Y are known, exactly or to lie in balls:
- *
- *     f = Σ m_p u_p + T        m = Σ h_p × u_p + t
- *
- * A form is ‖y‖ + line, y = P w + c. With u = u₀ + δ_u, |δ_u| ≤ ρ_u, and h, T, t likewise,
+ * A bound on a check where the inboard vectors u and the outboard numbers Y are known, exactly or to lie in balls. A form is
+ * ‖y‖ + line, y = P w + c. With u = u₀ + δ_u, |δ_u| ≤ ρ_u, and h, T, t likewise,
  *
  *     y = y₀ + Σ S δ + P_m (δ_h × δ_u)
  *     ‖y‖² ≤ ‖y₀‖² + 2 Σ max δ·Sᵀy₀ + 2 ‖y₀‖ x + (Σ ρ ‖S‖ + x)²        x = ‖P_m‖ Σ ρ_u ρ_h
  *
- * with norms of S no smaller than its largest singular value. A tip force free to point anywhere is one more u, about 0 with its size as
- * radius and the tip's reach for h; motion adds its most to every form. A direction u keeps its length, so δ_u lies across u₀ but for -ρ²/2 along it at most: at the directions that
- * load a check most, where Sᵀy₀ is along u₀, the bound is loose to second order only.
+ * with norms of S no smaller than its largest singular value. A direction u keeps its length, so δ_u lies across u₀ but for -ρ²/2 along
+ * it at most: at the directions that load a check most, where Sᵀy₀ is along u₀, the bound is loose to second order only. A tip force free
+ * to point anywhere is one more u, about 0 with its size as radius and the tip's reach for h; motion adds its most to every form. Forms
+ * that hold at no torque within reach are left out. Own derivation; the sweep is tested against every pose looked at.
  */
 import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
 import type { NestedCase } from './nestedCase.ts';
-import { type FormTable, LINE, ROWS } from './nestedForms.ts';
-
-/**
- * Joint load of joint i from u and Y at their offsets into `w` at `at`; with `whole` false only what is linear in Y (for parts of Y).
- */
-export function pairLoad(
-  load: NestedCase,
-  i: number,
-  u: Flat,
-  uAt: number,
-  Y: Flat,
-  yAt: number,
-  whole: boolean,
-  w: Flat,
-  at: number,
-): void {
-  const { pairs, weight } = load;
-  let fx = 0;
-  let fy = 0;
-  let fz = 0;
-  let mx = 0;
-  let my = 0;
-  let mz = 0;
-  for (let p = 0; p < pairs; p++) {
-    const ux = u[uAt + 3 * p]!;
-    const uy = u[uAt + 3 * p + 1]!;
-    const uz = u[uAt + 3 * p + 2]!;
-    const hx = Y[yAt + 3 * p]!;
-    const hy = Y[yAt + 3 * p + 1]!;
-    const hz = Y[yAt + 3 * p + 2]!;
-    const m = whole ? weight[pairs * i + p]! : 0;
-    fx += m * ux;
-    fy += m * uy;
-    fz += m * uz;
-    mx += hy * uz - hz * uy;
-    my += hz * ux - hx * uz;
-    mz += hx * uy - hy * ux;
-  }
-  if (load.tool) {
-    const t = yAt + 3 * pairs;
-    fx += Y[t]!;
-    fy += Y[t + 1]!;
-    fz += Y[t + 2]!;
-    mx += Y[t + 3]!;
-    my += Y[t + 4]!;
-    mz += Y[t + 5]!;
-  }
-  w[at] = fx;
-  w[at + 1] = fy;
-  w[at + 2] = fz;
-  w[at + 3] = mx;
-  w[at + 4] = my;
-  w[at + 5] = mz;
-}
-
-/** Value of check c at the joint load w [6]. */
-export function pairValue(table: FormTable, c: number, w: Flat): number {
-  const { factor, constant } = table;
-  const last = table.start[c + 1]!;
-  const ranged = table.ranged[c] === 1;
-  let value = Number.NEGATIVE_INFINITY;
-  for (let f = table.start[c]!; f < last; f++) {
-    if (ranged && (w[5]! < table.torqueFrom[f]! || w[5]! > table.torqueTo[f]!)) continue;
-    const rows = table.rows[f]!;
-    let square = 0;
-    for (let r = 0; r < rows; r++) {
-      const y = rowValue(factor, WRENCH * (ROWS * f + r), w) + constant[ROWS * f + r]!;
-      square += y * y;
-    }
-    let own = Math.sqrt(square) + constant[ROWS * f + LINE]!;
-    if (table.linear[f] === 1) own += rowValue(factor, WRENCH * (ROWS * f + LINE), w);
-    if (own > value) value = own;
-  }
-  return value;
-}
-
-function rowValue(factor: Flat, o: number, w: Flat): number {
-  return (
-    factor[o]! * w[0]! +
-    factor[o + 1]! * w[1]! +
-    factor[o + 2]! * w[2]! +
-    factor[o + 3]! * w[3]! +
-    factor[o + 4]! * w[4]! +
-    factor[o + 5]! * w[5]!
-  );
-}
+import { type FormTable, LINE, ROWS, rowValue } from './nestedForms.ts';
 
 export class NestedBound {
   /** Where `outward` and `both` leave the bound: a number handed back from call to call would be an object each. */

@@ -8,9 +8,10 @@
  */
 import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
-import { type NestedBound, pairLoad } from './nestedBound.ts';
+import type { NestedBound } from './nestedBound.ts';
 import type { NestedCase } from './nestedCase.ts';
 import type { FormTable } from './nestedForms.ts';
+import { pairLoad } from './nestedLoad.ts';
 import type { NestedTree } from './nestedTree.ts';
 
 const UNKNOWN = 0;

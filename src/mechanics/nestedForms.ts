@@ -1,4 +1,5 @@
 /** Checks laid out flat for the nested sweep. */
+import type { Flat } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
 import type { CheckForm, Form } from './form.ts';
 
@@ -105,4 +106,16 @@ export function feelsLoad(table: FormTable, c: number): boolean {
     if (table.normForce[f]! + table.normMoment[f]! + table.lineForce[f]! + table.lineMoment[f]! > 0) return true;
   }
   return false;
+}
+
+/** One row (its factors at `o`) at the joint load w [6]. */
+export function rowValue(factor: Flat, o: number, w: Flat): number {
+  return (
+    factor[o]! * w[0]! +
+    factor[o + 1]! * w[1]! +
+    factor[o + 2]! * w[2]! +
+    factor[o + 3]! * w[3]! +
+    factor[o + 4]! * w[4]! +
+    factor[o + 5]! * w[5]!
+  );
 }

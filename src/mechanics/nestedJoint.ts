@@ -8,10 +8,11 @@ import { WRENCH } from './chain.ts';
 import { beaten, type Leaders, offer } from './gridSweepLeaders.ts';
 import type { PoseValue } from './gridSweepPose.ts';
 import { HarmonicRow } from './harmonicRow.ts';
-import { NestedBound, pairLoad, pairValue } from './nestedBound.ts';
+import { NestedBound } from './nestedBound.ts';
 import type { NestedCase } from './nestedCase.ts';
 import { NestedCells } from './nestedCells.ts';
 import { type FormTable, feelsLoad } from './nestedForms.ts';
+import { pairLoad, pairValue } from './nestedLoad.ts';
 import type { NestedTree } from './nestedTree.ts';
 
 export class NestedJoint {

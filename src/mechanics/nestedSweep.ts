@@ -14,10 +14,10 @@ import type { Grid } from './gridSweepGrid.ts';
 import { type Leaders, offer } from './gridSweepLeaders.ts';
 import { PoseValue } from './gridSweepPose.ts';
 import { type NestedBalls, nestedBalls } from './nestedBalls.ts';
-import { pairValue } from './nestedBound.ts';
 import { type NestedCase, nestedCase } from './nestedCase.ts';
 import { type FormTable, feelsLoad, formTable } from './nestedForms.ts';
 import { NestedJoint } from './nestedJoint.ts';
+import { pairValue } from './nestedLoad.ts';
 import { type Stage, stagesOf } from './nestedStages.ts';
 import { NestedTree, TreeMemory } from './nestedTree.ts';
 
