@@ -1,7 +1,16 @@
 /** One sentence that says what the worst loads are worst over, and can be changed in place. */
 import { countText, secondsText } from '../../report/shown.ts';
 import { type ArmOnSheet, useArm, useDocument } from '../store/documentStore.ts';
-import { askSweep, isCurrent, type SweepState, stepFor, stopSweep, sweepNow, useSweep } from '../store/sweepStore.ts';
+import {
+  askSweep,
+  casesWaiting,
+  isCurrent,
+  type SweepState,
+  stepFor,
+  stopSweep,
+  sweepNow,
+  useSweep,
+} from '../store/sweepStore.ts';
 import { ProofPart } from './ProofPart.tsx';
 import { QuantityField } from './QuantityField.tsx';
 
@@ -59,9 +68,8 @@ export function SweepLine() {
 }
 
 /** Cases that were asked for and not swept yet. */
-function leftOutText(state: SweepState, { arm }: ArmOnSheet): string {
-  const asked = arm.cases.filter((load) => state.ofCase === null || load.name === state.ofCase);
-  const out = asked.filter((load) => !state.ofCases.includes(load.name)).map((load) => `“${load.name}”`);
+function leftOutText(state: SweepState, sheet: ArmOnSheet): string {
+  const out = casesWaiting(sheet, state).map((name) => `“${name}”`);
   return out.length > 0 ? `, without ${out.join(', ')}: press Sweep` : '';
 }
 

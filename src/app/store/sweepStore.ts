@@ -204,3 +204,10 @@ export function rowOf(
 ): CheckRow | undefined {
   return rows?.find((row) => row.jointIndex === joint && row.bearing === bearing && row.check === check);
 }
+
+/** Cases that the result was asked for and does not have yet, by name. */
+export function casesWaiting({ arm }: ArmOnSheet, state: Pick<SweepState, 'ofCase' | 'ofCases'>): readonly string[] {
+  return arm.cases
+    .filter((load) => (state.ofCase === null || load.name === state.ofCase) && !state.ofCases.includes(load.name))
+    .map((load) => load.name);
+}

@@ -7,7 +7,7 @@ import { type ArmOnSheet, armOf, presentArm } from './documentStore.ts';
 import { capacityOf } from './engine.ts';
 import { useProof } from './proofStore.ts';
 import type { Swept } from './runs.ts';
-import { useSweep } from './sweepStore.ts';
+import { casesWaiting, useSweep } from './sweepStore.ts';
 
 export interface WorstState {
   /** Undefined before anything was worked out. */
@@ -29,12 +29,16 @@ function joined(found: CheckRow, proven: CheckRow | undefined, gap: number): Che
   return { ...found, bound, gap: left, certified: left <= gap };
 }
 
-/** Rows of a sweep joined to those of a proof (of the same arm and cases; either may be missing), each with its verdict. */
+/**
+ * Rows of a sweep joined to those of a proof (of the same arm and cases; either may be missing), each with its verdict. While cases
+ * are `waiting` to be swept, what the grid found passes nothing.
+ */
 export function worstRows(
   sheet: ArmOnSheet,
   sweep: Swept | null,
   proof: readonly CheckRow[],
   gap: number,
+  waiting: readonly string[] = [],
 ): readonly CheckRow[] {
   const capacity = capacityOf(sheet.arm, sheet.chain);
   const proven = new Map(proof.map((row) => [key(row), row]));
@@ -47,13 +51,18 @@ export function worstRows(
       row.bound === null && sweep?.partial ? { scope: 'part of the grid' } : { gap },
     ),
   );
+  const honest = judged.map((row) =>
+    row.bound === null && row.verdict === 'pass' && waiting.length > 0
+      ? { ...row, verdict: 'unassessed' as const, reason: `not swept yet: ${waiting.join(', ')}` }
+      : row,
+  );
   const leftOut = sweep?.leftOut.map((row) => {
     const instead = proven.get(key(row));
     return instead && !Number.isNaN(instead.value)
       ? rowsWithVerdict(sheet.chain, [instead], capacity.checks, { gap })[0]!
       : row;
   });
-  return byJoint([...judged, ...(leftOut ?? []), ...capacity.missing]);
+  return byJoint([...honest, ...(leftOut ?? []), ...capacity.missing]);
 }
 
 /** The rows of a proof for one case, or over all. */
@@ -75,7 +84,8 @@ export function followWorst(): void {
     }
     const swept = sweep.of === of ? sweep.result : null;
     const proven = proof.best && proof.of === of ? proofRows(proof.best, swept ? sweep.ofCase : sweep.case) : [];
-    useWorst.setState({ rows: worstRows(armOf(of), swept, proven, proof.gap) });
+    const waiting = swept ? casesWaiting(armOf(of), sweep) : [];
+    useWorst.setState({ rows: worstRows(armOf(of), swept, proven, proof.gap, waiting) });
   };
   useSweep.subscribe((state, before) => {
     if (state.result !== before.result) update();
