@@ -80,7 +80,7 @@ function StaticField({ label, value }: { label: string; value: string }) {
   );
 }
 
-const KEY_WIDTH = 300;
+const KEY_WIDTH = 312;
 
 /** Utilisation as it is shown everywhere: ticks at the quarters, the limit, beyond it, and not rated. */
 function UtilisationKey() {
@@ -120,7 +120,7 @@ function UtilisationKey() {
           over
         </text>
         <text x={full + 78} y="27" textAnchor="middle">
-          not rated
+          not assessed
         </text>
       </g>
     </svg>
