@@ -10,6 +10,7 @@ import type { CheckForm, Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { GravityLoad } from './gravityLoad.ts';
 import { COARSE_CELLS, OutwardSets, TOP_LEVEL } from './outwardSets.ts';
+import { sameCheck, sameJointLoad } from './sameLoad.ts';
 
 /** The true kernel, as the search needs it. Poses [n] rad. */
 export interface Climber {
@@ -28,7 +29,8 @@ const SAMPLES = 300;
 const SAMPLE_SEED = 20261;
 
 export interface CheckState {
-  readonly check: CheckForm;
+  /** The same check of a later layout takes its place where the state is kept. */
+  check: CheckForm;
   /** Attained at `pose`; -Infinity before the first round. */
   found: number;
   readonly pose: Float64Array;
@@ -72,11 +74,15 @@ interface Entry extends CheckState {
 export class GravitySearch {
   readonly sets: OutwardSets;
   readonly entries: readonly Entry[];
-  private readonly chain: Chain;
+  readonly chain: Chain;
+  readonly load: ChainCase;
   private readonly gravity: GravityLoad;
   private readonly climber: Climber;
 
-  /** `checks` must satisfy `isHomogeneous`. `previous`: the search of an earlier layout, whose outward sets are used again. */
+  /**
+   * `checks` must satisfy `isHomogeneous`. `previous`: the search of an earlier layout, not used any more. Its outward sets serve again, and
+   * checks for which nothing has changed (`sameLoad.ts`) go on from where they stand.
+   */
   constructor(
     chain: Chain,
     load: ChainCase,
@@ -86,34 +92,43 @@ export class GravitySearch {
     previous: GravitySearch | null = null,
   ) {
     this.chain = chain;
+    this.load = load;
     this.gravity = gravity;
     this.climber = climber;
     this.sets = new OutwardSets(chain, gravity, previous?.sets ?? null);
     const kept = new Map<string, SphereCheck>();
-    this.entries = checks.map((check) => this.entry(check, kept, load));
+    this.entries = checks.map((check) => previous?.handOver(check, chain, load) ?? this.entry(check, kept));
+  }
+
+  /** The entry of a check of a later layout for which all is as it was; null where something changed. */
+  private handOver(check: CheckForm, chain: Chain, load: ChainCase): Entry | null {
+    const known = this.entries.find((entry) => sameCheck(entry.check, check));
+    if (!known || !sameJointLoad(this, { chain, load }, check.joint)) return null;
+    known.check = check;
+    return known;
   }
 
   /** A first look at the kernel: the best of a fixed set of random poses, every third angle at an end of its travel, starts each check. */
-  private sample(): void {
+  private sample(entries: readonly Entry[]): void {
     const { n, from, to } = this.chain;
     const random = seededRandom(SAMPLE_SEED);
     const pose = new Float64Array(n);
-    const best = new Float64Array(this.entries.length).fill(Number.NEGATIVE_INFINITY);
+    const best = new Float64Array(entries.length).fill(Number.NEGATIVE_INFINITY);
     for (let k = 0; k < SAMPLES; k++) {
       for (let i = 0; i < n; i++) {
         const pick = random.next();
         pose[i] = pick < 1 / 6 ? from[i]! : pick < 1 / 3 ? to[i]! : random.between(from[i]!, to[i]!);
       }
-      this.climber.valuesAt(this.entries, pose, (at, value) => {
+      this.climber.valuesAt(entries, pose, (at, value) => {
         if (!(value > best[at]!)) return;
         best[at] = value;
-        this.entries[at]!.pose.set(pose);
+        entries[at]!.pose.set(pose);
       });
     }
-    for (const entry of this.entries) this.offer(entry, Float64Array.from(entry.pose));
+    for (const entry of entries) this.offer(entry, Float64Array.from(entry.pose));
   }
 
-  private entry(check: CheckForm, kept: Map<string, SphereCheck>, load: ChainCase): Entry {
+  private entry(check: CheckForm, kept: Map<string, SphereCheck>): Entry {
     const searches = new Map<string, SphereCheck>();
     let floor = Number.NEGATIVE_INFINITY;
     for (const f of check.forms.flatMap(linearParts)) {
@@ -130,7 +145,7 @@ export class GravitySearch {
     }
     const list = [...searches.values()];
     const ceiling = Math.max(0, ...list.map((s) => s.ceiling));
-    const finite = Number.isFinite(ceiling) && load.mass.every(Number.isFinite);
+    const finite = Number.isFinite(ceiling) && this.load.mass.every(Number.isFinite);
     return {
       check,
       searches: list.map((search) => ({ search, bound: Number.POSITIVE_INFINITY })),
@@ -150,7 +165,8 @@ export class GravitySearch {
 
   /** One level more for every check whose gap is open; `due` is asked between checks and ends the round early. */
   round(gap: number, due: () => boolean = () => false): void {
-    if (this.entries.every((entry) => entry.found === Number.NEGATIVE_INFINITY)) this.sample();
+    const fresh = this.entries.filter((entry) => entry.found === Number.NEGATIVE_INFINITY);
+    if (fresh.length > 0) this.sample(fresh);
     const open = this.entries.filter((entry) => entry.level < TOP_LEVEL && gapOf(entry) > gap);
     const level = Math.min(...open.map((entry) => entry.level)) + 1;
     for (const entry of this.entries) {

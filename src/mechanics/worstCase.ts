@@ -15,6 +15,7 @@ import { gravityLoad } from './gravityLoad.ts';
 import { type CheckState, GravitySearch, gapOf, isHomogeneous, ROUNDING, raiseByRounding } from './gravitySearch.ts';
 import { OutwardSets } from './outwardSets.ts';
 import { polish } from './polish.ts';
+import { sameCheck, sameJointLoad } from './sameLoad.ts';
 import { sphereBounds } from './travelBounds.ts';
 
 export interface WorstRow {
@@ -48,24 +49,26 @@ interface Task {
   goes: number;
   /** Boxes of the next go. */
   boxes: number;
-  /** Branch and bound can do no more. */
+  /** Nothing more can be done for a gap down to `spentAt`. */
   spent: boolean;
+  spentAt: number;
 }
 
 export class WorstCase {
-  private readonly chain: Chain;
-  private readonly load: ChainCase;
+  readonly chain: Chain;
+  readonly load: ChainCase;
   private readonly gravity: GravitySearch | null;
   private readonly tasks: readonly Task[];
   private readonly states: readonly CheckState[];
   private readonly inboard = new Map<number, InboardDirections>();
   private readonly limits: Limits;
-  /** First bounds, in the order of the states. */
-  private travel: readonly number[] | null = null;
+  /** First bounds of what began without one. */
+  private travel: ReadonlyMap<CheckState, number> | null = null;
 
   /**
-   * `previous`: the search of an earlier layout of the same arm; its outward sets serve again where nothing outboard changed. `limits`: what
-   * checks are held against, so that work goes first where a verdict is not clear yet.
+   * `previous`: the search of an earlier layout of the same arm, not used any more: its outward sets serve again where nothing outboard changed,
+   * and checks for which all is as it was (`sameLoad.ts`) go on from where they stand. `limits`: what checks are held against, so that work
+   * goes first where a verdict is not clear yet.
    */
   constructor(
     chain: Chain,
@@ -84,15 +87,33 @@ export class WorstCase {
       : null;
     const entries = new Map(onSphere.map((check, k) => [check, this.gravity!.entries[k]!]));
     const sets = !weight && load.force === 'any' && load.speed === null ? freeSets(chain, load) : null;
-    this.states = checks.map((check) => entries.get(check) ?? blank(chain, check));
-    this.tasks = this.states.map((state) => ({
-      state,
-      spheres: sets && isHomogeneous(state.check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
-      branch: null,
-      goes: 0,
-      boxes: FIRST_BOXES,
-      spent: false,
-    }));
+    this.tasks = checks.map((check) => {
+      const known = previous?.handOver(check, chain, load);
+      if (known) return known;
+      const state = entries.get(check) ?? blank(chain, check);
+      return {
+        state,
+        spheres: sets && isHomogeneous(check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
+        branch: null,
+        goes: 0,
+        boxes: FIRST_BOXES,
+        spent: false,
+        spentAt: 0,
+      };
+    });
+    this.states = this.tasks.map((task) => task.state);
+  }
+
+  /** What is under way for a check of a later layout for which all is as it was; null where something changed. */
+  private handOver(check: CheckForm, chain: Chain, load: ChainCase): Task | null {
+    const known = this.tasks.find((task) => sameCheck(task.state.check, check));
+    if (!known || !sameJointLoad(this, { chain, load }, check.joint)) return null;
+    known.state.check = check;
+    return known;
+  }
+
+  private isIdle(task: Task, gap: number): boolean {
+    return (task.spent && gap >= task.spentAt) || gapOf(task.state) <= gap;
   }
 
   /** Whether every check has been looked at, so that it has a value and a bound. */
@@ -106,7 +127,7 @@ export class WorstCase {
 
   /** Whether more work can bring a check to the gap. */
   open(gap: number): boolean {
-    return this.gravity?.open(gap) || this.tasks.some((task) => !task.spent && gapOf(task.state) > gap);
+    return this.gravity?.open(gap) || this.tasks.some((task) => !this.isIdle(task, gap));
   }
 
   /** A slice of work: one round on the spheres, or one go at the next open check. `due` ends a round early. */
@@ -119,7 +140,7 @@ export class WorstCase {
     }
     let pick: Task | null = fresh ?? null;
     for (const task of this.tasks) {
-      if (fresh || task.spent || gapOf(task.state) <= gap) continue;
+      if (fresh || this.isIdle(task, gap)) continue;
       if (!pick || this.urgency(task) < this.urgency(pick)) pick = task;
     }
     if (pick) {
@@ -161,7 +182,8 @@ export class WorstCase {
       task.spent = task.goes > MOVING_CLIMBS;
       return;
     }
-    if (!task.branch) {
+    if (!task.branch || gap < task.spentAt) {
+      task.spentAt = gap;
       task.branch = new BranchBound(this.chain, this.load, state.check, {
         gap,
         seeds: this.seeds(state),
@@ -186,13 +208,8 @@ export class WorstCase {
 
   /** First bound, and the best of a few poses. */
   private begin({ state }: Task): void {
-    this.travel ??= sphereBounds(
-      this.chain,
-      this.load,
-      this.states.map((one) => one.check),
-      FIRST_ROUNDS,
-    );
-    state.bound = Math.min(state.bound, this.travel[this.states.indexOf(state)]!);
+    this.travel ??= this.firstBounds();
+    state.bound = Math.min(state.bound, this.travel.get(state) ?? Number.POSITIVE_INFINITY);
     state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);
     const random = seededRandom(state.check.joint + 1);
     const { from, to } = this.chain;
@@ -203,6 +220,14 @@ export class WorstCase {
       );
     }
     for (const pose of this.seeds(state)) this.offer(state, pose);
+  }
+
+  /** Bounds of every state that has none yet: those of one joint share their tables. */
+  private firstBounds(): ReadonlyMap<CheckState, number> {
+    const open = this.states.filter((state) => !Number.isFinite(state.bound));
+    const checks = open.map((state) => state.check);
+    const bounds = sphereBounds(this.chain, this.load, checks, FIRST_ROUNDS);
+    return new Map(open.map((state, k) => [state, bounds[k]!]));
   }
 
   private offer(state: CheckState, pose: Float64Array): void {
@@ -234,7 +259,7 @@ export class WorstCase {
 
   /** Poses to climb from: what is known of this check and of the checks beside it. */
   private seeds(state: CheckState): readonly Float64Array[] {
-    const near = this.states.filter(
+    const near = [state, ...this.states.filter((other) => other !== state)].filter(
       (other) => Math.abs(other.check.joint - state.check.joint) <= 1 && Number.isFinite(other.found),
     );
     return near.slice(0, 4).map((other) => other.pose);

@@ -242,9 +242,12 @@ describe('outward sets of an earlier layout', () => {
       true,
       true,
     ]);
+    // Not to the bit: what was kept starts the climbs of what is searched anew
     again.entries.forEach((entry, k) => {
-      expect(entry.bound).toBe(fresh.entries[k]!.bound);
-      expect(entry.found).toBe(fresh.entries[k]!.found);
+      const other = fresh.entries[k]!;
+      expect(gapOf(entry)).toBeLessThanOrEqual(1e-3);
+      expect(Math.abs(entry.bound - other.bound)).toBeLessThanOrEqual(1.001e-3 * other.bound);
+      expect(Math.abs(entry.found - other.found)).toBeLessThanOrEqual(1.001e-3 * other.bound);
     });
   });
 });
