@@ -1,4 +1,6 @@
 import { existsSync } from 'node:fs';
+import { resolve } from 'node:path';
+import { pathToFileURL } from 'node:url';
 import { afterEach, describe, expect, it } from 'vitest';
 import { seededRandom } from '../../src/math/random.ts';
 import { type JobEnd, JobFailed, type JobKind, type JobPool, type JobRequest } from '../../src/mechanics/job.ts';
@@ -11,7 +13,7 @@ import { jobServer } from '../../src/worker/serve.ts';
 import { workerPool } from '../../src/worker/workerPool.ts';
 import { randomArm } from '../randomArm.ts';
 
-const SCRIPT = new URL('../../dist/node/nodeWorker.js', import.meta.url);
+const SCRIPT = pathToFileURL(resolve('dist/node/nodeWorker.js'));
 
 /** A job that workers do not know of, so it is run by `fakeWorker` alone: squares of numbers; 13 is bad luck. */
 const squares: JobKind<number, number, number> = {
