@@ -2,12 +2,14 @@
 import { coldStartLines } from './coldStart.ts';
 import { dutyLines } from './duty.ts';
 import { sweepLines, workerLines } from './sweep.ts';
+import { worstLines } from './worst.ts';
 
 const BENCHES: Readonly<Record<string, () => Iterable<string> | AsyncIterable<string>>> = {
   sweep: sweepLines,
   workers: workerLines,
   start: coldStartLines,
   duty: dutyLines,
+  worst: worstLines,
 };
 
 const asked = process.argv.slice(2);
