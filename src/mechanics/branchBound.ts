@@ -99,7 +99,9 @@ export class BranchBound {
     }));
     // Cells so fine that what all inboard steps overshoot is a tenth of the gap asked for.
     const cell = Math.sqrt((0.8 * options.gap) / Math.max(1, this.inboard?.count ?? 1));
-    this.finest = Math.max(0, Math.min(TOP_LEVEL, Math.ceil(Math.log2(2 / (COARSE_CELLS * cell)))));
+    const fine = Math.max(0, Math.min(TOP_LEVEL, Math.ceil(Math.log2(2 / (COARSE_CELLS * cell)))));
+    // one joint's arc is in closed form
+    this.finest = (this.inboard?.count ?? 0) < 2 ? 0 : fine;
     this.ceiling = Math.max(...this.pieces.map((piece) => piece.box.ceiling()));
     this.queue = new BoxQueue(n + 2, options.most ?? FEW);
     this.low = new Float64Array(n + 2);
@@ -194,7 +196,7 @@ export class BranchBound {
         high[n] = b;
         low[n + 1] = c;
         high[n + 1] = d;
-        this.assess(index);
+        this.assess(index, Number.POSITIVE_INFINITY);
       }
     });
   }
@@ -202,6 +204,7 @@ export class BranchBound {
   /** Cuts the box of the largest bound in two. */
   private cut(): void {
     const { queue, low, high } = this;
+    const ceiling = queue.top;
     const index = queue.pop(low, high);
     const k = queue.cutAt;
     const middle = (low[k]! + high[k]!) / 2;
@@ -210,19 +213,22 @@ export class BranchBound {
     keptLow.set(low);
     keptHigh.set(high);
     high[k] = middle;
-    this.assess(index);
+    this.assess(index, ceiling);
     low.set(keptLow);
     high.set(keptHigh);
     low[k] = middle;
-    this.assess(index);
+    this.assess(index, ceiling);
   }
 
-  /** Bounds the box in `low`, `high`, shrinks it while that helps, and keeps it where it may hold the worst. */
-  private assess(index: number): void {
+  /**
+   * Bounds the box in `low`, `high`, a part of one of bound `ceiling`, shrinks it while that helps, and keeps it where it may hold the
+   * worst.
+   */
+  private assess(index: number, ceiling: number): void {
     const { low, high, chain, queue } = this;
     const piece = this.pieces[index]!;
     const { box } = piece;
-    let bound = Number.POSITIVE_INFINITY;
+    let bound = ceiling;
     for (let turn = 0; turn < 8; turn++) {
       this.boxes++;
       box.level = 0;
@@ -263,7 +269,7 @@ export class BranchBound {
   private tryMiddle(box: BoxBound): void {
     const { trial } = this;
     for (let k = 0; k < this.chain.n; k++) trial[k] = (this.low[k]! + this.high[k]!) / 2;
-    this.inboard?.follow(box.lever, trial, 1);
+    this.inboard?.follow(box.lever.at, trial, 1);
     if (this.climber.value(trial) > this.found) this.offer(Float64Array.from(trial));
   }
 

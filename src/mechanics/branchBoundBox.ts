@@ -15,16 +15,18 @@
  * K_jk δ_j δ_k ≤ ½ |K_jk| (δ_j² ρ_k/ρ_j + δ_k² ρ_j/ρ_k) leaves one-dimensional parabolas.
  */
 import type { Flat } from '../math/vector.ts';
-import { dot } from './branchBoundAlgebra.ts';
 import { crossAt, length3, ORDERS, type TurnedVector } from './branchBoundChain.ts';
 import type { InboardDirections } from './branchBoundInboard.ts';
-import { BoxTerms } from './branchBoundTerms.ts';
+import { BoxTerms, COST } from './branchBoundTerms.ts';
 import { WRENCH } from './chain.ts';
 
 /** Corner of a hexagon over its inner radius, with room for rounding; its six directions. */
 const CORNER = (2 / Math.sqrt(3)) * (1 + 1e-9);
 const COS6 = Array.from({ length: 6 }, (_, k) => Math.cos((k * Math.PI) / 3));
 const SIN6 = Array.from({ length: 6 }, (_, k) => Math.sin((k * Math.PI) / 3));
+
+/** A lever that may shrink to less than this share of what it can go across may point anywhere. */
+const STEADY_SUPPORT = 0.35;
 
 export class BoxBound extends BoxTerms {
   /** The most that lengths, masses and forces allow for the form, whatever the pose. */
@@ -173,102 +175,61 @@ export class BoxBound extends BoxTerms {
    * the support of u is convex, so over each of six triangles that cover the cone it lies below the plane through its corners.
    */
   private addSupport(g: number, inboard: InboardDirections): void {
-    const { vectors, lever, leverSlope, active, activeCount, alpha, beta, n, half, crossed } = this;
-    const { moment, mass, axis } = vectors;
-    const { seriesA: A, seriesB: B } = this;
-    const X = moment.series;
-    crossAt(lever, 0, beta, 0, moment.at, 0);
-    for (let k = 0; k < 3; k++) lever[k] = g * (lever[k]! + mass * alpha[k]!);
-    for (let a = 0; a < activeCount; a++) {
-      const k = active[a]!;
-      if (k < n) {
-        crossAt(leverSlope, 3 * k, beta, 0, moment.slope, 3 * k);
-        for (let c = 0; c < 3; c++) leverSlope[3 * k + c]! *= g;
-        for (let b = 0; b <= a; b++) {
-          const j = active[b]!;
-          crossAt(crossed, 0, axis, 3 * j, moment.slope, 3 * k);
-          this.leverEntry(j, k, g, 0, 0, crossed);
-        }
-      } else {
-        const d = 3 + 3 * (k - n);
-        crossAt(leverSlope, 3 * k, beta, d, moment.at, 0);
-        for (let c = 0; c < 3; c++) leverSlope[3 * k + c] = g * (leverSlope[3 * k + c]! + mass * alpha[d + c]!);
-        for (let b = 0; b <= a; b++) {
-          const j = active[b]!;
-          if (j < n) {
-            for (let c = 0; c < 3; c++) crossed[c] = moment.slope[3 * j + c]!;
-            this.leverEntry(j, k, g, d, 0, crossed);
-          } else {
-            for (let c = 0; c < 3; c++) crossed[c] = moment.at[c]!;
-            this.leverEntry(j, k, g, 9 + 3 * (j - n + k - n), mass, crossed);
-          }
-        }
-      }
-    }
-    // how far y can be from the middle, along itself and across
-    const length = length3(lever, 0);
-    let along = 0;
-    let aside = 0;
-    let most = 0;
-    for (let a = 0; a < activeCount; a++) {
-      const k = active[a]!;
-      const rho = half[k]!;
-      const square = dot(leverSlope, 3 * k, leverSlope, 3 * k);
-      const by = length > 0 ? dot(leverSlope, 3 * k, lever, 0) / length : 0;
-      most += Math.sqrt(square) * rho;
-      along += Math.abs(by) * rho;
-      aside += Math.sqrt(Math.max(0, square - by * by)) * rho;
-    }
-    const bent = g * (mass * A[2]! + B[0]! * X[2]! + B[1]! * X[1]! + B[2]! * X[0]!) + g * moment.ball * B[0]!;
-    this.scale += g * (mass * A[0]! + B[0]! * X[0]!);
-    if (moment.ball > 0) this.spread(g * B[0]!, vectors.spreadMoment);
-    const left = length - along - bent;
-    if (inboard.count > 0 && !(left > 0.35 * (aside + bent))) {
-      const here = inboard.most(lever, 0, 0);
-      this.value += here;
-      this.added += Math.min(most + bent, length + most + bent - here);
+    const { vectors, lever, active, activeCount, half, crossed } = this;
+    const { moment, mass } = vectors;
+    const B = this.seriesB[0]!;
+    this.expand(lever, g, mass, moment);
+    const held = g * moment.ball * B;
+    this.scale += g * (mass * this.seriesA[0]! + B * moment.series[0]!);
+    if (moment.ball > 0) this.spread(g * B, vectors.spreadMoment);
+    if (inboard.count > 0 && !(lever.left - held > STEADY_SUPPORT * (lever.aside + lever.bent + held))) {
+      // y may point anywhere: its support is at most the sum of the supports of its parts
+      this.value += inboard.most(lever.at, 0, 0);
+      this.added += lever.bent + held;
       for (let a = 0; a < activeCount; a++) {
         const k = active[a]!;
+        for (let c = 0; c < 3; c++) crossed[c] = -lever.slope[3 * k + c]!;
+        const rise = half[k]! * Math.max(inboard.most(lever.slope, 3 * k, 0), inboard.most(crossed, 0, 0));
+        this.added += rise;
         this.slopeRest[k] = Number.POSITIVE_INFINITY;
-        this.cost[k]! += half[k]! * length3(leverSlope, 3 * k) + (k < n ? 0 : 0.3 * length * half[k]!);
+        this.cost[k]! += COST.rough * rise + COST.bent * lever.share[k]!;
       }
       return;
     }
-    this.added += g * moment.ball * B[0]!;
-    this.unsettle(g * moment.ball * B[0]!, g * moment.ball * this.momentNorm);
-    this.setPlanes(inboard, length, (aside + bent) / left);
+    this.added += held;
+    this.unsettle(held, g * moment.ball * this.momentNorm);
+    this.setPlanes(inboard, (lever.aside + lever.bent + held) / (lever.left - held));
     // series of y, the direction being held
     this.addRest(g, mass, moment, null, 0, false);
-  }
-
-  /** Curvature of y by intervals j ≤ k: g (mass α_d + β_d × x). */
-  private leverEntry(j: number, k: number, g: number, d: number, mass: number, x: Flat): void {
-    const { leverBend, alpha, beta, size } = this;
-    const at = 3 * (j * size + k);
-    crossAt(leverBend, at, beta, d, x, 0);
-    for (let c = 0; c < 3; c++) leverBend[at + c] = g * (leverBend[at + c]! + mass * alpha[d + c]!);
   }
 
   /** How much of the last bound may be the overshoot of the tables of gravity's directions. */
   overshoot(pose: Flat): number {
     const { inboard, lever, level } = this;
     if (!inboard || this.gravity === 0) return 0;
-    return inboard.most(lever, 0, level) - inboard.follow(lever, pose, Math.min(level, 1));
+    return inboard.most(lever.at, 0, level) - inboard.follow(lever.at, pose, Math.min(level, 1));
   }
 
-  private setPlanes(inboard: InboardDirections, length: number, spread: number): void {
-    const { planes, lever, corners } = this;
+  private setPlanes(inboard: InboardDirections, spread: number): void {
+    const { planes, corners } = this;
+    const { at, length } = this.lever;
     if (inboard.count === 0) {
       planes.set(inboard.fixed);
       this.planeCount = 1;
       return;
     }
     // an orthonormal pair across y, and the support at y and at six corners whose hexagon holds the cone
-    const [yx, yy, yz] = [lever[0]! / length, lever[1]! / length, lever[2]! / length];
+    const yx = at[0]! / length;
+    const yy = at[1]! / length;
+    const yz = at[2]! / length;
     const flat = Math.abs(yz) < 0.7;
     const size = flat ? Math.sqrt(yx * yx + yy * yy) : Math.sqrt(yy * yy + yz * yz);
-    const [px, py, pz] = flat ? [yy / size, -yx / size, 0] : [0, yz / size, -yy / size];
-    const [qx, qy, qz] = [yy * pz - yz * py, yz * px - yx * pz, yx * py - yy * px];
+    const px = flat ? yy / size : 0;
+    const py = flat ? -yx / size : yz / size;
+    const pz = flat ? 0 : -yy / size;
+    const qx = yy * pz - yz * py;
+    const qy = yz * px - yx * pz;
+    const qz = yx * py - yy * px;
     const radius = spread * CORNER + 1e-9;
     const level = Math.min(this.level, Math.max(0, Math.ceil(Math.log2(0.5 / radius))));
     const point = this.crossed;

@@ -2,12 +2,21 @@ import type { Flat } from '../math/vector.ts';
 import { add, dot, mostOf, operatorNorm } from './branchBoundAlgebra.ts';
 import { BoxChain, crossAt, length3, ORDERS, type TurnedVector } from './branchBoundChain.ts';
 import type { InboardDirections } from './branchBoundInboard.ts';
+import { Lever } from './branchBoundLever.ts';
 import type { Chain, ChainCase } from './chain.ts';
 import type { Form } from './form.ts';
 import { TOP_LEVEL } from './outwardSets.ts';
 
 /** Share of the largest sums that rounding may take. */
 const ROUNDING = 1e-12;
+
+/**
+ * Weights of what an interval's width costs a bound, for choosing where to cut: first order where the direction is unknown, second
+ * order there, slopes, mixed curvatures, curvatures that rise, remainders. Chosen by trial on random arms of six joints.
+ */
+export const COST = { rough: 2, bent: 4, slope: 1, mixed: 3, hollow: 1, rest: 3 } as const;
+/** A lever that may shrink to less than this share of its length may point anywhere. */
+const STEADY_FREE = 0.3;
 
 /** What a box bound (`branchBoundBox.ts`) is made of: the series of its terms at the middle, and how they are put together. */
 export class BoxTerms {
@@ -40,10 +49,9 @@ export class BoxTerms {
   protected readonly load: ChainCase;
   /** Directions of gravity in place of the inboard joints; null where those are intervals of the box. */
   protected readonly inboard: InboardDirections | null;
-  /** y = g (M α + β × h): at the middle [3], slopes [3·size], curvatures [3·size²]. */
-  readonly lever: Flat;
-  protected readonly leverSlope: Flat;
-  protected readonly leverBend: Flat;
+  /** Y = g (M α + β × h), and what a free direction pulls on. */
+  readonly lever: Lever;
+  protected readonly freeLever: Lever;
   /** Linear functions of y that together lie nowhere below its support. [3·6] */
   protected readonly planes: Flat;
   protected planeCount = 0;
@@ -60,10 +68,10 @@ export class BoxTerms {
   protected readonly offsetNorm: number;
   /** e and its derivatives by θ, φ, θθ, θφ, φφ; α and β of each. [3·6] */
   protected readonly e: Flat;
-  protected readonly alpha: Flat;
-  protected readonly beta: Flat;
-  protected readonly seriesA: Flat;
-  protected readonly seriesB: Flat;
+  readonly alpha: Flat;
+  readonly beta: Flat;
+  readonly seriesA: Flat;
+  readonly seriesB: Flat;
   protected readonly seriesE: Flat;
   protected readonly product: Flat;
   protected readonly product2: Flat;
@@ -71,7 +79,6 @@ export class BoxTerms {
   protected readonly pull: Flat;
   protected readonly across: Flat;
   protected readonly turned: Flat;
-  protected readonly asideOf: Flat;
   protected readonly crossed: Flat;
   /** Second- and third-order remainders, what balls add, and the size of what was summed. */
   protected rest2 = 0;
@@ -112,11 +119,9 @@ export class BoxTerms {
     this.pull = flat(3);
     this.across = flat(3 * this.size);
     this.turned = flat(3 * this.size);
-    this.asideOf = flat(3 * this.size);
     this.crossed = flat(9);
-    this.lever = flat(3);
-    this.leverSlope = flat(3 * this.size);
-    this.leverBend = flat(3 * this.size * this.size);
+    this.lever = new Lever(n);
+    this.freeLever = new Lever(n);
     this.planes = flat(18);
     this.corners = flat(6);
     this.planeSlope = flat(this.size);
@@ -283,74 +288,51 @@ export class BoxTerms {
     this.restByTurn = weight * byTurn;
   }
 
+  protected expand(lever: Lever, weight: number, mass: number, x: TurnedVector): void {
+    lever.expand(weight, mass, x, this, this.vectors, this.active, this.activeCount, this.half);
+  }
+
   /** Adds weight ‖mass α + β × x‖: the pull of a direction that turns to where it does most. */
   protected addFree(weight: number, mass: number, x: TurnedVector): void {
-    const { alpha, beta, n, free, half, vectors, asideOf, active, activeCount, size, bend, slopeRest, cubic } = this;
-    const { joint } = vectors;
-    crossAt(free, 0, beta, 0, x.at, 0);
-    for (let k = 0; k < 3; k++) free[k]! += mass * alpha[k]!;
-    const length = length3(free, 0);
-    // Slopes of N: how far it can turn over the box
-    let along = 0;
-    let aside = 0;
-    let most = 0;
-    for (let a = 0; a < activeCount; a++) {
-      const k = active[a]!;
-      const at = 3 * k;
-      if (k < joint) {
-        asideOf.fill(0, at, at + 3);
-        continue;
-      }
-      if (k < n) crossAt(asideOf, at, beta, 0, x.slope, at);
-      else {
-        const d = 3 + 3 * (k - n);
-        crossAt(asideOf, at, beta, d, x.at, 0);
-        for (let c = 0; c < 3; c++) asideOf[at + c]! += mass * alpha[d + c]!;
-      }
-      most += length3(asideOf, at) * half[k]!;
-      if (!(length > 0)) continue;
-      const by = dot(asideOf, at, free, 0) / length;
-      along += Math.abs(by) * half[k]!;
-      for (let c = 0; c < 3; c++) asideOf[at + c]! -= (by * free[c]!) / length;
-      aside += length3(asideOf, at) * half[k]!;
-    }
-    const { seriesA: A, seriesB: B } = this;
-    const X = x.series;
-    const bent = mass * A[2]! + B[0]! * X[2]! + B[1]! * X[1]! + B[2]! * X[0]!;
-    const left = length - along - bent;
-    if (!(left > 0.3 * length)) {
+    const { free, half, active, activeCount, size, slope, bend, slopeRest, cubic, freeLever: lever } = this;
+    this.expand(lever, weight, mass, x);
+    const { length, aside, bent, left } = lever;
+    this.value += length;
+    if (!(left > STEADY_FREE * length)) {
       // It may turn anywhere: its length alone.
-      this.value += weight * length;
-      this.added += weight * (most + bent);
-      this.scale += weight * length;
+      this.added += lever.most + bent;
+      this.scale += length;
       for (let a = 0; a < activeCount; a++) {
         const k = active[a]!;
         slopeRest[k] = Number.POSITIVE_INFINITY;
-        if (k >= joint) this.cost[k]! += weight * half[k]! * (k < n ? B[0]! * x.widening[ORDERS * k + 1]! : length);
+        this.cost[k]! += COST.rough * half[k]! * length3(lever.slope, 3 * k) + COST.bent * lever.share[k]!;
       }
       return;
     }
-    for (let k = 0; k < 3; k++) free[k]! /= length;
+    for (let k = 0; k < 3; k++) free[k] = lever.at[k]! / length;
     const turn = Math.atan2(aside + bent, left);
-    this.addPull(weight, mass, x, free, null, turn, false);
+    this.addRest(weight, mass, x, null, turn, false);
+    // the turn itself is at most Σ x_k (own share) plus the bent part
+    const share = (this.restByTurn * turn) / (aside + bent || 1);
+    this.rest3 += (share * bent) / 3;
     for (let a = 0; a < activeCount; a++) {
       const j = active[a]!;
+      const by = dot(lever.slope, 3 * j, free, 0);
+      slope[j]! += by;
+      const own = Math.sqrt(Math.max(0, dot(lever.slope, 3 * j, lever.slope, 3 * j) - by * by));
+      slopeRest[j]! += (this.restByTurn * own) / length;
+      cubic[j]! += share * own;
       for (let b = a; b < activeCount; b++) {
         const k = active[b]!;
-        add(bend, size, j, k, (weight / length) * dot(asideOf, 3 * j, asideOf, 3 * k));
+        const across = dot(lever.slope, 3 * j, lever.slope, 3 * k) - by * dot(lever.slope, 3 * k, free, 0);
+        add(bend, size, j, k, dot(lever.bend, 3 * (j * size + k), free, 0) + across / length);
       }
-      const own = length3(asideOf, 3 * j);
-      slopeRest[j]! += (this.restByTurn * own) / length;
-      // the turn itself is at most Σ x_k (own share) plus the bent part
-      cubic[j]! += (this.restByTurn * turn * own) / (aside + bent);
     }
-    this.rest3 += (this.restByTurn * turn * (aside > 0 ? bent / (aside + bent) : 1)) / 3;
   }
 
   /** The bound from what the terms have left: the largest over the planes of the support. */
   protected close(): number {
-    const { active, activeCount, slope, bend, slopeRest, size, planeCount, planes, lever, leverSlope, leverBend } =
-      this;
+    const { active, activeCount, slope, bend, slopeRest, size, planeCount, planes, lever } = this;
     const blur = ROUNDING * this.scale;
     for (let a = 0; a < activeCount; a++) slopeRest[active[a]!]! += this.cubic[active[a]!]! + blur;
     let most: number;
@@ -362,19 +344,19 @@ export class BoxTerms {
         const u = 3 * p;
         for (let a = 0; a < activeCount; a++) {
           const j = active[a]!;
-          planeSlope[j] = slope[j]! + dot(planes, u, leverSlope, 3 * j);
+          planeSlope[j] = slope[j]! + dot(planes, u, lever.slope, 3 * j);
           for (let b = a; b < activeCount; b++) {
             const k = active[b]!;
-            const value = bend[j * size + k]! + dot(planes, u, leverBend, 3 * (j * size + k));
+            const value = bend[j * size + k]! + dot(planes, u, lever.bend, 3 * (j * size + k));
             planeBend[j * size + k] = value;
             planeBend[k * size + j] = value;
           }
         }
-        const here = this.value + dot(planes, u, lever, 0) + this.rise(planeSlope, planeBend, 1 / planeCount);
+        const here = this.value + dot(planes, u, lever.at, 0) + this.rise(planeSlope, planeBend, 1 / planeCount);
         if (!(here <= most)) most = here;
       }
       if (planeCount === 1) {
-        this.value += dot(planes, 0, lever, 0);
+        this.value += dot(planes, 0, lever.at, 0);
         slope.set(planeSlope);
         bend.set(planeBend);
       } else {
@@ -389,12 +371,12 @@ export class BoxTerms {
 
   /** Support at the middle, from the planes that meet there. */
   protected planeTop(): number {
-    return dot(this.planes, 0, this.lever, 0);
+    return dot(this.planes, 0, this.lever.at, 0);
   }
 
   /** The most that the linear and quadratic model with its remainder rises from the middle; costs are added with `share`. */
   protected rise(slope: Flat, bend: Flat, share: number): number {
-    const { active, activeCount, half, size, slopeRest, cubic, cost } = this;
+    const { active, activeCount, half, size, cubic, cost } = this;
     let linear = this.rest2;
     let quadratic = this.rest3;
     for (let a = 0; a < activeCount; a++) {
@@ -405,16 +387,15 @@ export class BoxTerms {
         const j = active[b]!;
         if (j !== k) mixed += Math.abs(bend[k * size + j]!) * half[j]!;
       }
-      const g = Math.abs(slope[k]!);
-      const c = bend[k * size + k]! + mixed / rho;
-      linear += g * rho;
-      quadratic += mostOf(g * rho, (c * rho * rho) / 2, (rho * cubic[k]!) / 3);
-      const unknown = Number.isFinite(slopeRest[k]!) ? slopeRest[k]! : 0;
-      const loss = g * rho + (mixed * rho) / 2 + Math.max(0, bend[k * size + k]!) * rho * rho + (unknown * rho) / 2;
+      const g = Math.abs(slope[k]!) * rho;
+      const own = bend[k * size + k]! * rho * rho;
+      const rest = rho * cubic[k]!;
+      mixed *= rho;
+      linear += g;
+      quadratic += mostOf(g, (own + mixed) / 2, rest / 3);
+      const loss = COST.slope * g + COST.mixed * mixed + COST.hollow * Math.max(0, own) + COST.rest * rest;
       cost[k]! += share * loss;
     }
     return Math.min(linear, quadratic);
   }
 }
-
-/** Maximum of a x + b x² + c x³ over 0 ≤ x ≤ 1, with a, c ≥ 0. */
