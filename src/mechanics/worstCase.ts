@@ -52,6 +52,8 @@ interface Task {
   /** Nothing more can be done for a gap down to `spentAt`. */
   spent: boolean;
   spentAt: number;
+  /** Value attained that was climbed from to the last digit; NaN: none. */
+  polished: number;
 }
 
 export class WorstCase {
@@ -99,6 +101,7 @@ export class WorstCase {
         boxes: FIRST_BOXES,
         spent: false,
         spentAt: 0,
+        polished: Number.NaN,
       };
     });
     this.states = this.tasks.map((task) => task.state);
@@ -278,12 +281,13 @@ export class WorstCase {
       const { free, wrench } = branch.state();
       return { ...result(state), free, wrench };
     }
-    if (this.gravity && state.found !== Number.NEGATIVE_INFINITY) {
+    if (this.gravity && state.found !== Number.NEGATIVE_INFINITY && state.found !== task.polished) {
       const fine = polish(this.chain, this.load, state.check, state.pose);
       if (fine.value >= state.found) {
         state.found = fine.value;
         state.pose.set(fine.pose);
       }
+      task.polished = state.found;
       raiseByRounding(state);
     }
     const { wrench, ...worst } = worstAtPose(this.chain, this.load, state.pose, state.check);
