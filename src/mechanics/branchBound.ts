@@ -252,7 +252,7 @@ export class BranchBound {
       if (share > 0.8) break;
     }
     let at = -1;
-    let most = -1;
+    let most = 0;
     for (let k = 0; k < box.size; k++) {
       if (!(high[k]! > low[k]!)) continue;
       if (!(box.cost[k]! > most)) continue;
@@ -260,7 +260,10 @@ export class BranchBound {
       at = k;
     }
     if (at < 0 || high[at]! - low[at]! < 1e-9) {
-      if (bound > this.closed) this.closed = bound;
+      // no cut can help: the finest tables, and that is what can be said
+      box.level = this.finest;
+      this.boxes++;
+      this.closed = Math.max(this.closed, Math.min(bound, box.bound(low, high, 0)));
       return;
     }
     queue.push(bound, low, high, at, index);

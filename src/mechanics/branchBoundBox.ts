@@ -277,7 +277,10 @@ export class BoxBound extends BoxTerms {
       if (tip.ball > 0) this.added += P * tip.ball * (this.across0(baseForce) + baseForce.ball * B);
     } else {
       this.addPull(P, 1, tip, toolForce.at, toolForce, 0, true);
-      if (toolForce.ball > 0) this.addFree(P * toolForce.ball, 1, tip);
+      if (toolForce.ball > 0) {
+        this.addFree(P * toolForce.ball, 1, tip);
+        this.spread(P * this.reachOf(1, tip), vectors.spreadTool);
+      }
       if (tip.ball > 0) this.added += P * tip.ball * B;
     }
     if (tip.ball === 0) return;

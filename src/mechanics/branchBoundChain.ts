@@ -60,6 +60,7 @@ export class BoxChain {
   readonly spreadBase: Flat;
   readonly spreadMoment: Flat;
   readonly spreadTip: Flat;
+  readonly spreadTool: Flat;
   private readonly chain: Chain;
   private readonly hasBase: boolean;
   private readonly hasTool: boolean;
@@ -94,6 +95,7 @@ export class BoxChain {
     this.spreadBase = flat(n);
     this.spreadMoment = flat(n);
     this.spreadTip = flat(n);
+    this.spreadTool = flat(n);
     const g = Math.hypot(...chain.gravity);
     this.gravity = Float64Array.from(chain.gravity, (v) => (g > 0 ? v / g : 0));
     this.hasBase = load.force === 'base';
@@ -296,7 +298,7 @@ export class BoxChain {
     for (let o = n - 1; o >= last; o--) {
       this.holdLink(moment, this.lever, this.spreadMoment, o, middle, half);
       this.holdLink(tip, this.step, this.spreadTip, o, middle, half);
-      if (this.hasTool) this.holdLink(toolForce, null, null, o, middle, half);
+      if (this.hasTool) this.holdLink(toolForce, null, this.spreadTool, o, middle, half);
     }
     if (toolForce.ball >= 1) {
       toolForce.at.fill(0);
@@ -304,14 +306,7 @@ export class BoxChain {
     }
   }
 
-  private holdLink(
-    out: TurnedVector,
-    own: Flat | null,
-    spread: Flat | null,
-    o: number,
-    middle: Flat,
-    half: Flat,
-  ): void {
+  private holdLink(out: TurnedVector, own: Flat | null, spread: Flat, o: number, middle: Flat, half: Flat): void {
     const { at } = out;
     let [x, y, z] = [at[0]!, at[1]!, at[2]!];
     if (o + 1 < this.n) {
@@ -331,7 +326,7 @@ export class BoxChain {
     const rho = Math.min(half[o]!, Math.PI / 2);
     const across = Math.sqrt(x * x + y * y) * Math.sin(rho);
     out.ball += across;
-    if (spread) spread[o] = across;
+    spread[o] = across;
     const shrink = half[o]! < Math.PI / 2 ? Math.cos(rho) : 0;
     const c = shrink * Math.cos(middle[o]!);
     const s = shrink * Math.sin(middle[o]!);
