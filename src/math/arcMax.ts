@@ -67,8 +67,18 @@ export class ArcMax {
     this.bound = new Float64Array(this.intervals);
   }
 
-  /** `kappa` ≥ f(-d∥); `sag` as in arcBound; intervals bounded by `enough` are not refined further. */
-  run(f: ArcFunction, level: number, kappa: number, sag: number, enough: number): number {
+  /**
+   * `kappa` ≥ f(-d∥); `sag` as in arcBound; intervals bounded by `enough` are not refined further. `limit`: what f exceeds nowhere on the arc;
+   * a bound that comes up to it ends the search.
+   */
+  run(
+    f: ArcFunction,
+    level: number,
+    kappa: number,
+    sag: number,
+    enough: number,
+    limit = Number.POSITIVE_INFINITY,
+  ): number {
     this.top = Number.NEGATIVE_INFINITY;
     if (this.step < 1e-12) {
       this.arg = this.from;
@@ -90,6 +100,7 @@ export class ArcMax {
       bound[j] = arcBound(value[j]!, value[j + 1]!, step, kappa, sag);
       if (!(bound[j]! <= widest)) widest = bound[j]!;
     }
+    if (widest > limit) widest = limit;
     if (level === 0 || !(widest > enough)) return widest;
     this.f = f;
     this.level = level;
@@ -109,6 +120,7 @@ export class ArcMax {
       }
       const t1 = this.from + pick * step;
       this.refine(t1, pick === intervals - 1 ? this.to : t1 + step, 1);
+      if (this.best >= limit) return limit;
     }
     return this.best;
   }

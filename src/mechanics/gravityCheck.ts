@@ -17,6 +17,7 @@ import {
   intoNext,
   PolarTabled,
   parallelRuns,
+  type Roof,
   Tabled,
   turnBack,
 } from './inwardSteps.ts';
@@ -24,6 +25,7 @@ import type { OutwardSets } from './outwardSets.ts';
 
 /** Inboard steps that are taken on exact arcs rather than from tables. */
 const EXACT = 2;
+const ROUNDING = 1e-13;
 /** A cap this much above the bound of its level will not become the better one. */
 const CAP_WORTH = 1.01;
 
@@ -34,6 +36,7 @@ export class GravityCheck {
   private readonly value: DirectionValue;
   private readonly u0: Float64Array;
   private capHelps: boolean;
+  private readonly roof: Roof;
 
   /** `g` m/s² ≥ 0; `down` its unit direction in the base frame; `form` with c = 0 and o = 0. */
   constructor(sets: OutwardSets, joint: number, form: Form, g: number, down: ArrayLike<number>) {
@@ -43,6 +46,7 @@ export class GravityCheck {
     this.u0 = new Float64Array(3);
     intoNext(this.u0, down, sets.chain.rotation, 0);
     const runs = parallelRuns(sets, joint);
+    this.roof = { most: this.value.scale };
     // One step inboard reaches an arc of directions at most, and is cheap to follow exactly.
     this.capHelps = runs.length > 1;
     let next: DirectionFunction = this.value;
@@ -51,7 +55,7 @@ export class GravityCheck {
         const full = s + 1 < runs.length && runs[s + 1]!.full;
         next = full ? new PolarTabled(next) : new Tabled(next);
       }
-      const step = new InwardStep(runs[s]!, next, this.value.scale);
+      const step = new InwardStep(runs[s]!, next, this.value.scale, this.roof);
       this.steps.unshift(step);
       next = step;
     }
@@ -78,7 +82,10 @@ export class GravityCheck {
    * `bound` and far cheaper, for the inboard searches would find the same value everywhere.
    */
   cap(level: number, enough: number): number {
-    return this.value.cap(level, enough);
+    const cap = this.value.cap(level, enough);
+    // With room for rounding, by which the tables may lie below it
+    this.roof.most = Math.min(this.roof.most, cap + ROUNDING * this.value.scale);
+    return cap;
   }
 
   /**

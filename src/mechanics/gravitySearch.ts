@@ -9,7 +9,7 @@ import { FanCheck, type SphereCheck } from './fanCheck.ts';
 import type { CheckForm, Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { GravityLoad } from './gravityLoad.ts';
-import { COARSE_CELLS, OutwardSets, TOP_LEVEL } from './outwardSets.ts';
+import { COARSE_CELLS, OutwardSets } from './outwardSets.ts';
 import { sameCheck, sameJointLoad } from './sameLoad.ts';
 
 /** The true kernel, as the search needs it. Poses [n] rad. */
@@ -25,6 +25,8 @@ export interface Climber {
   climb(check: CheckForm, pose: Float64Array): number;
 }
 
+/** 4096 cells an edge: for the few paths along a crease, where a level only halves the gap. */
+const LAST_LEVEL = 9;
 const SAMPLES = 300;
 const SAMPLE_SEED = 20261;
 
@@ -154,20 +156,20 @@ export class GravitySearch {
       pose: new Float64Array(this.chain.n),
       bound: Number.POSITIVE_INFINITY,
       ceiling,
-      level: finite ? -1 : TOP_LEVEL,
+      level: finite ? -1 : LAST_LEVEL,
     };
   }
 
   /** Whether another round can still help some check. */
   open(gap: number): boolean {
-    return this.entries.some((entry) => entry.level < TOP_LEVEL && gapOf(entry) > gap);
+    return this.entries.some((entry) => entry.level < LAST_LEVEL && gapOf(entry) > gap);
   }
 
   /** One level more for every check whose gap is open; `due` is asked between checks and ends the round early. */
   round(gap: number, due: () => boolean = () => false): void {
     const fresh = this.entries.filter((entry) => entry.found === Number.NEGATIVE_INFINITY);
     if (fresh.length > 0) this.sample(fresh);
-    const open = this.entries.filter((entry) => entry.level < TOP_LEVEL && gapOf(entry) > gap);
+    const open = this.entries.filter((entry) => entry.level < LAST_LEVEL && gapOf(entry) > gap);
     const level = Math.min(...open.map((entry) => entry.level)) + 1;
     for (const entry of this.entries) {
       if (due()) return;

@@ -120,12 +120,18 @@ export class PolarTabled implements DirectionFunction {
   }
 }
 
+/** What a function of direction exceeds nowhere, for a unit vector; lowered as more is known. */
+export interface Roof {
+  most: number;
+}
+
 /** Gravity carried over one step inward: the maximum of the next function over the step's arc. */
 export class InwardStep implements DirectionFunction {
   private readonly run: ParallelRun;
   private readonly next: DirectionFunction;
   private readonly arc: ArcMax;
   private readonly scale: number;
+  private readonly roof: Roof;
   private dx = 0;
   private dy = 0;
   private dz = 0;
@@ -133,14 +139,21 @@ export class InwardStep implements DirectionFunction {
   private up = Number.NaN;
   private down = Number.NaN;
 
-  constructor(run: ParallelRun, next: DirectionFunction, scale: number) {
+  /** `scale`: what the value of a unit vector cannot exceed by its terms' sizes. `roof`: what it never exceeds, whatever its direction. */
+  constructor(run: ParallelRun, next: DirectionFunction, scale: number, roof: Roof) {
     this.run = run;
     this.next = next;
     this.scale = scale;
+    this.roof = roof;
     this.arc = new ArcMax(run.from, run.from + (run.full ? 2 * Math.PI : run.width));
   }
 
   of(x: number, y: number, z: number, level: number, enough: number): number {
+    return this.search(x, y, z, level, enough, this.roof.most);
+  }
+
+  /** `most` as of a roof. */
+  private search(x: number, y: number, z: number, level: number, enough: number, most: number): number {
     if (Number.isNaN(this.up)) {
       this.up = this.carry(0, 0, 1, 0, Number.NEGATIVE_INFINITY);
       this.down = this.carry(0, 0, -1, 0, Number.NEGATIVE_INFINITY);
@@ -156,12 +169,13 @@ export class InwardStep implements DirectionFunction {
       return this.carry(0, 0, z, level, enough) + rho * this.scale;
     }
     const kappa = z > 0 ? z * this.down : -z * this.up;
-    return this.arc.run(this, level, kappa, rho * this.scale, enough * Math.sqrt(rho * rho + z * z));
+    const length = Math.sqrt(rho * rho + z * z);
+    return this.arc.run(this, level, kappa, rho * this.scale, enough * length, most * length);
   }
 
   /** Turns u (housing frame before the step) into the frame after it at the best angle, and writes the angles into the pose. */
   carryBest(u: Float64Array, pose: Float64Array, level: number, enough: number): void {
-    this.of(u[0]!, u[1]!, u[2]!, level, enough);
+    this.search(u[0]!, u[1]!, u[2]!, level, enough, Number.POSITIVE_INFINITY);
     const { run } = this;
     const angle = this.arc.arg;
     // Rounding must not carry a joint past its travel.
