@@ -3,7 +3,6 @@
  * their factor, or that skips the cell of the governing path. Mutants take the place of a module of `math/`; the rest of the search is the real one.
  */
 import { afterEach, describe, expect, it, vi } from 'vitest';
-import type { CheckForm } from '../../src/mechanics/form.ts';
 import type { Climber } from '../../src/mechanics/gravitySearch.ts';
 import { randomArm } from '../randomArm.ts';
 import { contradictions } from './adversary.ts';
@@ -17,56 +16,39 @@ afterEach(() => {
   vi.resetModules();
 });
 
-/** Never climbs, so that a value above a bound is left for the adversary to find. */
-function idle(climb: Climber): Climber {
-  return {
-    value: (check, pose) => climb.value(check, pose),
-    valuesAt: (entries, pose, take) => climb.valuesAt(entries, pose, take),
-    climb: (check: CheckForm, pose) => climb.value(check, pose),
-  };
-}
-
-interface Verdict {
-  /** Arms on which the adversary contradicted the search. */
-  contradicted: number;
-  /** Arms on which the search itself met a value above its bound and gave up. */
-  refused: number;
-  arms: number;
-}
+/** Says nothing of what is attained: then no mutant trips over its own bound, and all is left to the adversary. */
+const SILENT: Climber = {
+  value: () => 0,
+  valuesAt: (entries, _pose, take) => entries.forEach((_, at) => void take(at, 0)),
+  climb: () => 0,
+};
 
 const LEVELS = 3;
 
-/** The property of `weights.test.ts` on twelve arms of 2–5 joints, by the modules as they are mocked now. */
-async function judge(): Promise<Verdict> {
+/** The property of `weights.test.ts` on twelve arms of 2–5 joints, by the modules as they are mocked now: arms contradicted. */
+async function contradicted(): Promise<number> {
   const { GravitySearch, isHomogeneous } = await import('../../src/mechanics/gravitySearch.ts');
-  const { GravityClimb } = await import('../../src/mechanics/gravityClimb.ts');
   const { gravityLoad } = await import('../../src/mechanics/gravityLoad.ts');
   const { flattenArm } = await import('../../src/mechanics/chain.ts');
   const { loadChecks } = await import('../../src/mechanics/loadChecks.ts');
-  const verdict: Verdict = { contradicted: 0, refused: 0, arms: 0 };
+  let count = 0;
   for (let seed = 301; seed <= 312; seed++) {
     const arm = randomArm(seed, { joints: 2 + (seed % 4), full: seed % 3 === 0 ? 1 : 0 });
     const chain = flattenArm(arm);
     const load = chain.cases[0]!;
     const checks = loadChecks(arm, chain).filter(isHomogeneous);
-    const climb = idle(new GravityClimb(chain, load));
-    verdict.arms++;
-    try {
-      const search = new GravitySearch(chain, load, gravityLoad(chain, load)!, checks, climb);
-      for (let level = 0; level < LEVELS; level++) search.round(1e-4);
-      const claims = search.entries.map(({ check, found, pose, bound }) => ({ check, found, pose, bound, free: null }));
-      if (contradictions(arm, 0, claims, { seed, poses: 1000, climbs: 2 }).length > 0) verdict.contradicted++;
-    } catch (error) {
-      expect((error as Error).message).toMatch(/bound below an attained value/);
-      verdict.refused++;
-    }
+    const search = new GravitySearch(chain, load, gravityLoad(chain, load)!, checks, SILENT);
+    for (let level = 0; level < LEVELS; level++) search.round(1e-4);
+    const claims = search.entries.map(({ check, found, pose, bound }) => ({ check, found, pose, bound, free: null }));
+    const said = contradictions(arm, 0, claims, { seed, poses: 1000, climbs: 2 });
+    if (said.some((line) => line.includes('exceeds the bound'))) count++;
   }
-  return verdict;
+  return count;
 }
 
 describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
   it('hold with the search as it is', async () => {
-    expect(await judge()).toEqual({ contradicted: 0, refused: 0, arms: 12 });
+    expect(await contradicted()).toBe(0);
   });
 
   it('catch tables shrunk by half a percent', async () => {
@@ -90,9 +72,7 @@ describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
       }
       return { PolarTable: Shrunk };
     });
-    const { contradicted, refused } = await judge();
-    expect(contradicted).toBeGreaterThan(0);
-    expect(contradicted + refused).toBeGreaterThan(6);
+    expect(await contradicted()).toBeGreaterThan(6);
   });
 
   it('catch tables that take the lower corner for the cell', async () => {
@@ -108,9 +88,7 @@ describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
       }
       return { SphereTable: Cornered };
     });
-    const { contradicted, refused } = await judge();
-    expect(contradicted).toBeGreaterThan(0);
-    expect(contradicted + refused).toBeGreaterThan(6);
+    expect(await contradicted()).toBeGreaterThan(6);
   });
 
   it('catch arcs without their factor: the larger of two samples', async () => {
@@ -126,9 +104,7 @@ describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
       }
       return { ...real, ArcMax: Flat };
     });
-    const { contradicted, refused } = await judge();
-    expect(contradicted).toBeGreaterThan(0);
-    expect(contradicted + refused).toBeGreaterThan(6);
+    expect(await contradicted()).toBeGreaterThan(6);
   });
 
   it('catch a skipped cell: the one that holds the governing path', async () => {
@@ -146,9 +122,7 @@ describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
       }
       return { ...real, ArcMax: Skipping };
     });
-    const { contradicted, refused } = await judge();
-    expect(contradicted).toBeGreaterThan(0);
-    expect(contradicted + refused).toBeGreaterThan(6);
+    expect(await contradicted()).toBeGreaterThan(6);
   });
 
   it('catch a roof that is half a percent too low', async () => {
@@ -163,7 +137,6 @@ describe('twelve arms of 2–5 joints (seeds 301–312)', () => {
       }
       return { ...real, ArcMax: Low };
     });
-    const { contradicted, refused } = await judge();
-    expect(contradicted + refused).toBeGreaterThan(0);
+    expect(await contradicted()).toBeGreaterThan(0);
   });
 });
