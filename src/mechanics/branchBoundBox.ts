@@ -200,7 +200,12 @@ export class BoxBound extends BoxTerms {
     this.unsettle(held, g * moment.ball * this.momentNorm);
     this.setPlanes(inboard, (lever.aside + lever.bent + held) / (lever.left - held));
     // series of y, the direction being held
-    this.addRest(g, mass, moment, null, 0, false);
+    let crossMost = 0;
+    for (let p = 0; p < this.planeCount; p++) {
+      crossAt(crossed, 0, this.planes, 3 * p, this.beta, 0);
+      crossMost = Math.max(crossMost, length3(crossed, 0) + length3(this.planes, 3 * p) * this.seriesB[1]!);
+    }
+    this.addRest(g, mass, moment, null, 0, false, crossMost);
   }
 
   /** How much of the last bound may be the overshoot of the tables of gravity's directions. */

@@ -5,14 +5,18 @@
  * u reaches the frame by turning back through the joints inboard of it, which is the chain of an outward set run the other way: `OutwardSets`
  * of a chain whose only first moment is the unit vector u at its end. Look-ups never lie below N (see `outwardSets.ts`).
  */
-import { type Flat, IDENTITY33 } from '../math/vector.ts';
+import { type Flat, IDENTITY33, rotateBack3 } from '../math/vector.ts';
 import type { Chain } from './chain.ts';
 import { OutwardSets, TOP_LEVEL } from './outwardSets.ts';
 
+/** What of a unit vector across an axis counts as none; bounds are raised by ten times as much. */
+const ALONG = 1e-13;
+
 export class InboardDirections {
-  /** Joints that turn u. */
+  /** Joints that turn u; the ones within them, whose axes lie along it, are left out. */
   readonly count: number;
-  /** Gravity's unit direction in the housing of the innermost joint: in the frame itself where no joint turns it. [3] */
+  private readonly first: number;
+  /** Gravity's unit direction in the housing of the innermost joint that turns it: in the frame itself where none does. [3] */
   readonly fixed: Flat;
   private readonly sets: OutwardSets | null;
   private readonly rotation: Flat;
@@ -20,17 +24,25 @@ export class InboardDirections {
 
   /** `inLink`: as seen from link `joint`; else from its housing. */
   constructor(chain: Chain, joint: number, inLink: boolean) {
-    const count = inLink ? joint + 1 : joint;
-    this.count = count;
+    const end = inLink ? joint + 1 : joint;
+    const g = Math.hypot(...chain.gravity);
+    const u = Float64Array.from(chain.gravity, (v) => (g > 0 ? v / g : 0));
+    // through the housings of joints that leave it as it is
+    let first = 0;
+    for (; ; first++) {
+      rotateBack3(u, 0, chain.rotation, 9 * first, u, 0);
+      if (first === end || Math.hypot(u[0]!, u[1]!) > ALONG) break;
+      if (inLink && first === joint) {
+        first = end;
+        break;
+      }
+    }
+    this.first = first;
+    this.count = end - first;
     // from the frame to the link (or housing) of the outermost joint that turns
     this.rotation = inLink ? Float64Array.from(IDENTITY33) : chain.rotation.slice(9 * joint, 9 * joint + 9);
-    const g = Math.hypot(...chain.gravity);
-    const down = chain.gravity.map((v) => (g > 0 ? v / g : 0));
-    const R = chain.rotation;
-    // at the innermost housing
-    const start = [0, 1, 2].map((k) => R[k]! * down[0]! + R[3 + k]! * down[1]! + R[6 + k]! * down[2]!);
-    this.fixed = Float64Array.from(start);
-    this.sets = count === 0 ? null : new OutwardSets(reversed(chain, count), endDirection(count, start));
+    this.fixed = u;
+    this.sets = this.count === 0 ? null : new OutwardSets(reversed(chain, first, end), endDirection(this.count, u));
   }
 
   /** Upper bound of N(y), y at y[at..] in the frame, tables of `level`; never more than |y|. */
@@ -55,7 +67,7 @@ export class InboardDirections {
     for (let r = 0; r < 3; r++) x[r] = R[3 * r]! * y[0]! + R[3 * r + 1]! * y[1]! + R[3 * r + 2]! * y[2]!;
     for (let k = 0; k < count; k++) {
       const angle = sets.argument(k, x[0]!, x[1]!, x[2]!, level);
-      pose[count - 1 - k] = -angle;
+      pose[this.first + count - 1 - k] = -angle;
       const c = Math.cos(angle);
       const s = Math.sin(angle);
       const [a, b, d] = [c * x[0]! + s * x[1]!, c * x[1]! - s * x[0]!, x[2]!];
@@ -70,10 +82,11 @@ export class InboardDirections {
   }
 }
 
-/** The `joint` innermost joints, innermost last, turning the other way. */
-function reversed(chain: Chain, joint: number): Chain {
-  const order = Array.from({ length: joint }, (_, k) => joint - 1 - k);
-  const rotation = new Float64Array(9 * joint);
+/** Joints first … end-1, innermost last, turning the other way. */
+function reversed(chain: Chain, first: number, end: number): Chain {
+  const count = end - first;
+  const order = Array.from({ length: count }, (_, k) => end - 1 - k);
+  const rotation = new Float64Array(9 * count);
   order.forEach((j, k) => {
     if (k === 0) return;
     // joint k of the reversed chain stands where joint j+1 of the chain stands, seen the other way
@@ -86,12 +99,12 @@ function reversed(chain: Chain, joint: number): Chain {
   rotation[8] = 1;
   return {
     ...chain,
-    n: joint,
+    n: count,
     names: order.map((j) => chain.names[j]!),
     jointIndex: order,
-    origin: new Float64Array(3 * joint),
+    origin: new Float64Array(3 * count),
     rotation,
-    housing: new Float64Array(9 * joint),
+    housing: new Float64Array(9 * count),
     from: Float64Array.from(order, (j) => -chain.to[j]!),
     to: Float64Array.from(order, (j) => -chain.from[j]!),
     full: Uint8Array.from(order, (j) => chain.full[j]!),
@@ -101,8 +114,8 @@ function reversed(chain: Chain, joint: number): Chain {
 }
 
 /** No mass, and the unit vector as the first moment at the end. */
-function endDirection(joint: number, direction: readonly number[]) {
-  const first = new Float64Array(3 * joint);
-  first.set(direction, 3 * (joint - 1));
-  return { mass: new Float64Array(joint), first };
+function endDirection(count: number, direction: Flat) {
+  const first = new Float64Array(3 * count);
+  first.set(direction, 3 * (count - 1));
+  return { mass: new Float64Array(count), first };
 }

@@ -227,10 +227,10 @@ export class BoxTerms {
         add(bend, size, n + s, n + t, dot(crossed, 3, u, 0));
       }
     }
-    this.addRest(weight, mass, x, turning, turn, tool);
+    this.addRest(weight, mass, x, turning, turn, tool, Number.POSITIVE_INFINITY);
   }
 
-  /** Remainders of the term just added, from the series of its factors. */
+  /** Remainders of the term just added, from the series of its factors; `crossMost` bounds |u × β| over the box. */
   protected addRest(
     weight: number,
     mass: number,
@@ -238,6 +238,7 @@ export class BoxTerms {
     turning: TurnedVector | null,
     turn: number,
     tool: boolean,
+    crossMost: number,
   ): void {
     const { seriesA: A, seriesB: B, seriesV: V, product: BX, product2: BU, cubic, n, vectors } = this;
     const { innermost, outermost, joint } = vectors;
@@ -254,7 +255,10 @@ export class BoxTerms {
       BX[k] = bx;
       BU[k] = bu;
     }
-    this.rest2 += weight * (BX[2]! * U[0]! + BX[1]! * U[1]! + BX[0]! * U[2]!);
+    // (β × x)·u = x·(u × β)
+    BU[0] = Math.min(BU[0]!, crossMost);
+    const second = mass * (A[2]! * U[0]! + A[1]! * U[1]! + A[0]! * U[2]!);
+    this.rest2 += weight * (second + BU[0]! * X[2]! + BU[1]! * X[1]! + BU[2]! * X[0]!);
     this.scale += weight * BX[0]!;
     for (let o = joint; o < outermost; o++) {
       const w = ORDERS * o;
@@ -311,7 +315,9 @@ export class BoxTerms {
     }
     for (let k = 0; k < 3; k++) free[k] = lever.at[k]! / length;
     const turn = Math.atan2(aside + bent, left);
-    this.addRest(weight, mass, x, null, turn, false);
+    crossAt(this.crossed, 0, free, 0, this.beta, 0);
+    const crossMost = length3(this.crossed, 0) + this.seriesB[0]! * turn + this.seriesB[1]!;
+    this.addRest(weight, mass, x, null, turn, false, crossMost);
     // the turn itself is at most Σ x_k (own share) plus the bent part
     const share = (this.restByTurn * turn) / (aside + bent || 1);
     this.rest3 += (share * bent) / 3;
