@@ -37,3 +37,20 @@ export function operatorNorm(f: Form, column: number): number {
   }
   return Math.sqrt(most);
 }
+
+/** Bound of the norm of e → u × P_mᵀ e, P_m the moment columns of P; `scratch` [≥ 9]. */
+export function crossedNorm(f: Form, u: Flat, at: number, scratch: Flat): number {
+  for (let r = 0; r < f.rows; r++) {
+    const o = WRENCH * r + 3;
+    scratch[3 * r] = u[at + 1]! * f.P[o + 2]! - u[at + 2]! * f.P[o + 1]!;
+    scratch[3 * r + 1] = u[at + 2]! * f.P[o]! - u[at]! * f.P[o + 2]!;
+    scratch[3 * r + 2] = u[at]! * f.P[o + 1]! - u[at + 1]! * f.P[o]!;
+  }
+  let most = 0;
+  for (let r = 0; r < f.rows; r++) {
+    let sum = 0;
+    for (let s = 0; s < f.rows; s++) sum += Math.abs(dot(scratch, 3 * r, scratch, 3 * s));
+    most = Math.max(most, sum);
+  }
+  return Math.sqrt(most);
+}

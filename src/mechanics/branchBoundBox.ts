@@ -15,6 +15,7 @@
  * K_jk δ_j δ_k ≤ ½ |K_jk| (δ_j² ρ_k/ρ_j + δ_k² ρ_j/ρ_k) leaves one-dimensional parabolas.
  */
 import type { Flat } from '../math/vector.ts';
+import { crossedNorm } from './branchBoundAlgebra.ts';
 import { crossAt, length3, ORDERS, type TurnedVector } from './branchBoundChain.ts';
 import type { InboardDirections } from './branchBoundInboard.ts';
 import { BoxTerms, COST } from './branchBoundTerms.ts';
@@ -200,12 +201,19 @@ export class BoxBound extends BoxTerms {
     this.unsettle(held, g * moment.ball * this.momentNorm);
     this.setPlanes(inboard, (lever.aside + lever.bent + held) / (lever.left - held));
     // series of y, the direction being held
+    const width = half[this.n]! + half[this.n + 1]!;
     let crossMost = 0;
+    let crossNorm = 0;
+    // planes of a support may be steeper than a direction
+    let steep = 1;
     for (let p = 0; p < this.planeCount; p++) {
+      const norm = crossedNorm(this.form, this.planes, 3 * p, crossed);
+      crossNorm = Math.max(crossNorm, norm);
+      steep = Math.max(steep, length3(this.planes, 3 * p));
       crossAt(crossed, 0, this.planes, 3 * p, this.beta, 0);
-      crossMost = Math.max(crossMost, length3(crossed, 0) + length3(this.planes, 3 * p) * this.seriesB[1]!);
+      crossMost = Math.max(crossMost, length3(crossed, 0) + norm * width);
     }
-    this.addRest(g, mass, moment, null, 0, false, crossMost);
+    this.addRest(g * steep, mass, moment, null, 0, false, crossMost / steep, crossNorm / steep);
   }
 
   /** How much of the last bound may be the overshoot of the tables of gravity's directions. */

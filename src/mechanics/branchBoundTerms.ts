@@ -227,10 +227,13 @@ export class BoxTerms {
         add(bend, size, n + s, n + t, dot(crossed, 3, u, 0));
       }
     }
-    this.addRest(weight, mass, x, turning, turn, tool, Number.POSITIVE_INFINITY);
+    this.addRest(weight, mass, x, turning, turn, tool, Number.POSITIVE_INFINITY, Number.POSITIVE_INFINITY);
   }
 
-  /** Remainders of the term just added, from the series of its factors; `crossMost` bounds |u × β| over the box. */
+  /**
+   * Remainders of the term just added, from the series of its factors; `crossMost` bounds |u × β| over the box, `crossNorm` the norm of
+   * e → u × P_mᵀ e where u is fixed.
+   */
   protected addRest(
     weight: number,
     mass: number,
@@ -239,6 +242,7 @@ export class BoxTerms {
     turn: number,
     tool: boolean,
     crossMost: number,
+    crossNorm: number,
   ): void {
     const { seriesA: A, seriesB: B, seriesV: V, product: BX, product2: BU, cubic, n, vectors } = this;
     const { innermost, outermost, joint } = vectors;
@@ -257,6 +261,10 @@ export class BoxTerms {
     }
     // (β × x)·u = x·(u × β)
     BU[0] = Math.min(BU[0]!, crossMost);
+    const width = this.half[n]! + this.half[n + 1]!;
+    if (crossNorm < this.momentNorm) {
+      for (let k = 1, power = width; k < ORDERS; k++, power *= width / k) BU[k] = crossNorm * power;
+    }
     const second = mass * (A[2]! * U[0]! + A[1]! * U[1]! + A[0]! * U[2]!);
     this.rest2 += weight * (second + BU[0]! * X[2]! + BU[1]! * X[1]! + BU[2]! * X[0]!);
     this.scale += weight * BX[0]!;
@@ -277,12 +285,11 @@ export class BoxTerms {
       }
     }
     // by the width of e: d(A_k) = norm width^(k-1)/(k-1)!
-    const width = this.half[n]! + this.half[n + 1]!;
     let sum = 0;
     for (let k = 1, power = 1; k < ORDERS; power *= width / k, k++) {
       let ux = 0;
       for (let m = 0; m <= 3 - k; m++) ux += X[m]! * U[3 - k - m]!;
-      sum += power * (mass * this.forceNorm * U[3 - k]! + this.momentNorm * ux);
+      sum += power * (mass * this.forceNorm * U[3 - k]! + Math.min(this.momentNorm, crossNorm) * ux);
     }
     cubic[n]! += weight * sum;
     cubic[n + 1]! += weight * sum;
@@ -317,7 +324,7 @@ export class BoxTerms {
     const turn = Math.atan2(aside + bent, left);
     crossAt(this.crossed, 0, free, 0, this.beta, 0);
     const crossMost = length3(this.crossed, 0) + this.seriesB[0]! * turn + this.seriesB[1]!;
-    this.addRest(weight, mass, x, null, turn, false, crossMost);
+    this.addRest(weight, mass, x, null, turn, false, crossMost, Number.POSITIVE_INFINITY);
     // the turn itself is at most Σ x_k (own share) plus the bent part
     const share = (this.restByTurn * turn) / (aside + bent || 1);
     this.rest3 += (share * bent) / 3;
