@@ -7,10 +7,11 @@
 import { seededRandom } from '../math/random.ts';
 import type { Flat, Numbers } from '../math/vector.ts';
 import { BoxBound } from './branchBoundBox.ts';
+import { formsAt, sameAllRound } from './branchBoundForms.ts';
 import { InboardDirections } from './branchBoundInboard.ts';
 import { BoxQueue } from './branchBoundQueue.ts';
 import { shrinkBox } from './branchBoundShrink.ts';
-import { type Chain, type ChainCase, WRENCH } from './chain.ts';
+import type { Chain, ChainCase } from './chain.ts';
 import { type CheckForm, type Form, form } from './form.ts';
 import { type FreePart, freePart, newFreeWorst } from './freeLoads.ts';
 import { COARSE_CELLS, TOP_LEVEL } from './outwardSets.ts';
@@ -85,11 +86,12 @@ export class BranchBound {
     this.pose = new Float64Array(n);
     this.worst = newFreeWorst(n);
     this.climber = new Polish(chain, load, check);
+    const forms = formsAt(chain, load, check.joint, check.forms);
     // A form that is the same all round the axis may be read in the link's frame, where joint i turns gravity alone
-    this.inLink = load.force !== 'base' && check.forms.every(sameAllRound);
+    this.inLink = load.force !== 'base' && forms.every(sameAllRound);
     const makeDirections = (joint: number, inLink: boolean) => new InboardDirections(chain, joint, inLink);
     this.inboard = load.force === 'base' ? null : (options.inboard ?? makeDirections)(check.joint, this.inLink);
-    this.pieces = check.forms.map((f) => ({
+    this.pieces = forms.map((f) => ({
       form: f,
       box: new BoxBound(chain, load, check.joint, f, this.inboard),
       torque:
@@ -301,21 +303,4 @@ export class BranchBound {
     high[n + 1] = d;
     return can;
   }
-}
-
-/** Whether a form keeps its value when the load turns about the z axis: rows that turn into each other, or that look along z. */
-function sameAllRound(f: Form): boolean {
-  const { P, c, l } = f;
-  const along = (row: Numbers, at: number) => [0, 1, 3, 4].every((k) => row[at + k] === 0);
-  if (!along(l, 0) || f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY) return false;
-  const pair = f.rows >= 2 && !(along(P, 0) && along(P, WRENCH));
-  for (let r = pair ? 2 : 0; r < f.rows; r++) if (!along(P, WRENCH * r)) return false;
-  if (!pair) return true;
-  if (c[0] !== 0 || c[1] !== 0) return false;
-  // second row = first row turned by a right angle: R P = P R for every turn R
-  for (const k of [0, 3]) {
-    const [a, b, d, e] = [P[k]!, P[k + 1]!, P[WRENCH + k]!, P[WRENCH + k + 1]!];
-    if (a !== e || b !== -d || P[k + 2] !== 0 || P[WRENCH + k + 2] !== 0) return false;
-  }
-  return true;
 }
