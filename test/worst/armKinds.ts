@@ -26,6 +26,14 @@ function kind(name: string, options: Omit<RandomArmOptions, 'joints'>, change: (
 }
 const same = (arm: Arm) => arm;
 
+/** With all the checks of bearings and shafts, which are many: three joints at most. */
+function short(name: string, options: Omit<RandomArmOptions, 'joints'>): ArmKind {
+  return {
+    name: `${name}, three joints at most`,
+    make: (seed, joints) => withParts(randomArm(seed, { joints: 1 + (joints % 3), ...options }), seed),
+  };
+}
+
 export function withJoints(arm: Arm, change: (joint: Joint, k: number) => Joint): Arm {
   return { ...arm, joints: arm.joints.map(change) };
 }
@@ -126,6 +134,7 @@ export const WEIGHT_KINDS: readonly ArmKind[] = [
   kind('axes nearly antiparallel', {}, (arm, seed) => nearlyParallel(arm, TILTS[seed % TILTS.length]!, true)),
   kind('force along gravity', {}, withForceAlong),
   kind('gears and belts', { drives: true }, withoutPretension),
+  short('bearings and shafts', {}),
   kind('centres on the axes', {}, (arm) =>
     withJoints(arm, (joint) => ({ ...joint, link: { ...joint.link, centre: alongAxis(joint) } })),
   ),
@@ -171,6 +180,7 @@ export const OTHER_KINDS: readonly ArmKind[] = [
     nearlyParallel(arm, TILTS[seed % TILTS.length]!, seed % 2 === 0),
   ),
   kind('motion, gravity along the first axis', { motion: true }, alongFirst),
+  short('force any way, bearings, shafts and gears', { force: 'any', drives: true }),
   kind('force any way, massless', { force: 'any' }, (arm) => massless(arm, 0)),
 ];
 

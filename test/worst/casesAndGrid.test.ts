@@ -12,13 +12,13 @@ import { allChecks, type Claim, contradictions, nameOf, Plain, some } from './ad
 import { severalCases } from './armKinds.ts';
 
 describe('several cases with factors', () => {
-  it('hold case by case and over all: 12 arms of 1–6 joints, three cases each (seeds 401–412)', () => {
+  it('hold case by case and over all: 8 arms of 1–6 joints, three cases each (seeds 401–408)', () => {
     const said: string[] = [];
-    for (let seed = 401; seed <= 412; seed++) {
+    for (let seed = 401; seed <= 408; seed++) {
       const arm = severalCases(seed, 1 + (seed % 6));
       const chain = flattenArm(arm);
       const checks = loadChecks(arm, chain);
-      const result = worstArm(arm, { gap: 2e-2, seconds: 0.4 });
+      const result = worstArm(arm, { gap: 2e-2, seconds: 0.3 });
       arm.cases.forEach((load, k) => {
         const rows = result.eachCase.filter((row) => row.case === load.name);
         const claims = rows.map((row, c): Claim => {

@@ -88,14 +88,14 @@ const NAMES = (arm: Arm, seed: number, count: number) =>
   ).map(nameOf);
 
 describe('slopes against the full computation', () => {
-  it('of weights: span, overhang, mass and travel of 12 arms of 1–4 joints (seeds 1–12)', () => {
+  it('of weights: span, overhang, mass and travel of 10 arms of 1–4 joints (seeds 1–10)', () => {
     const all = fresh();
-    for (let seed = 1; seed <= 12; seed++) {
+    for (let seed = 1; seed <= 10; seed++) {
       const arm = withParts(randomArm(seed, { joints: 1 + (seed % 4), travel: 2.5, full: 0 }), seed);
       compare(arm, seed, NAMES(arm, seed, 4), 5, all);
     }
     expect(all.off).toEqual([]);
-    expect(all.smooth).toBeGreaterThan(120);
+    expect(all.smooth).toBeGreaterThan(100);
     expect(all.corners).toBeLessThan(0.1 * all.smooth);
     expect([...all.kinds].sort()).toEqual(['mass', 'overhang', 'span', 'travel from', 'travel to']);
   });
