@@ -4,6 +4,7 @@ import { createRoot } from 'react-dom/client';
 import { Sheet } from './sheet/Sheet.tsx';
 import { presentArm, useDocument } from './store/documentStore.ts';
 import { goToWorst, hardestRow } from './store/goTo.ts';
+import { lastingAfterEdits } from './store/lastingStore.ts';
 import { keepSheet, openLastSheet } from './store/persistence.ts';
 import { poseStore, restPose, setPose } from './store/poseStore.ts';
 import { proveAfterEdits } from './store/proofStore.ts';
@@ -32,7 +33,7 @@ function armChanged(fresh: boolean): void {
 }
 
 function goToTrouble(): void {
-  const { rows } = useWorst.getState();
+  const { searched: rows } = useWorst.getState();
   if (!rows || !untouched || poseStore.getState().pose !== untouched) return;
   untouched = null;
   const row = hardestRow(rows);
@@ -42,12 +43,13 @@ function goToTrouble(): void {
 followTone();
 sweepAfterEdits();
 proveAfterEdits();
+lastingAfterEdits();
 followWorst();
 useDocument.subscribe((state, before) => {
   if (state.file !== before.file || state.draft !== before.draft) armChanged(state.origin !== before.origin);
 });
 useWorst.subscribe((state, before) => {
-  if (state.rows !== before.rows) goToTrouble();
+  if (state.searched !== before.searched) goToTrouble();
 });
 createRoot(document.getElementById('sheet')!).render(
   <StrictMode>

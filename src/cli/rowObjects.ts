@@ -1,7 +1,7 @@
 /** Check rows in the contract's JSON shape, and the exit code they ask for. */
 import { degrees } from '../report/shown.ts';
 import { WHOLE_ARM } from '../studies/dutyRows.ts';
-import { type CheckRow, isMissing } from '../studies/results.ts';
+import { type CheckRow, isMissing, moreIsBetter } from '../studies/results.ts';
 import { fromSI } from '../units/unit.ts';
 import { EXIT, type ExitCode } from './exit.ts';
 import { warn } from './output.ts';
@@ -62,7 +62,7 @@ export function armObjects(rows: readonly CheckRow[]): readonly Json[] {
 /** A life without end is a value; any other endless value is a failure, like one that is not a number. */
 function isFailed(row: CheckRow): boolean {
   if (isMissing(row)) return false;
-  return Number.isNaN(row.value) || (!Number.isFinite(row.value) && !/life$/.test(row.check));
+  return Number.isNaN(row.value) || (!Number.isFinite(row.value) && !moreIsBetter(row));
 }
 
 /**

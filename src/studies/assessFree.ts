@@ -18,7 +18,7 @@ import {
 import type { PoseLoad } from '../mechanics/freeLoadsPose.ts';
 
 /** Each form of a check as a check of its own that holds for every torque; empty where the check has none. */
-export function looseForms({ form }: CapacityCheck): readonly CheckForm[] {
+export function looseForms({ form }: Pick<CapacityCheck, 'form'>): readonly CheckForm[] {
   if (!form) return [];
   const open = (f: Form): Form => ({
     ...f,

@@ -1,12 +1,12 @@
 /** Which check governs each bearing and each shaft, for a first look: the highest utilisation, and what that look does not cover. */
-import { type CheckRow, isMissing, type Verdict } from './results.ts';
+import { attainedShare, type CheckRow, isMissing, type Verdict } from './results.ts';
 
 export interface Governing {
   readonly joint: string;
   readonly jointIndex: number;
   /** Null: the joint's shaft. */
   readonly bearing: CheckRow['bearing'];
-  /** The row of the highest utilisation; null where none has one. */
+  /** The row whose value takes up most of its allowable, of equal ones that of the highest bound; null where none has a utilisation. */
   readonly row: CheckRow | null;
   /** Of all rows together: `over` where one is; else `unassessed` where one is; `pass` only where every one passes. */
   readonly verdict: Verdict;
@@ -36,7 +36,7 @@ function governs(rows: readonly CheckRow[]): Governing {
   // What is over governs before what only may be.
   const candidates = over.length > 0 ? over.filter((row) => held.includes(row)) : held;
   const row = candidates.reduce<CheckRow | null>(
-    (most, one) => (most === null || one.utilisation! > most.utilisation! ? one : most),
+    (most, one) => (most === null || harder(one, most) ? one : most),
     null,
   );
   const open = rows
@@ -53,6 +53,17 @@ function governs(rows: readonly CheckRow[]): Governing {
     why: why(row, held.length, over.length),
     open,
   };
+}
+
+/** A bound says how bad a check might be, not how bad it is: what is attained comes first. */
+function harder(one: CheckRow, other: CheckRow): boolean {
+  const [a, b] = [attained(one), attained(other)];
+  return a > b || (a === b && one.utilisation! > other.utilisation!);
+}
+
+function attained(row: CheckRow): number {
+  // Below a floor nothing counts, whatever the value.
+  return Math.min(attainedShare(row) ?? row.utilisation!, row.utilisation!);
 }
 
 function why(row: CheckRow | null, held: number, over: number): string {

@@ -31,9 +31,9 @@ export function dutyRows(arm: Arm, chain: Chain, duty: DutyResult | null): reado
   if (duty === null) {
     const gaps = dutyGaps(arm, chain).map((gap) => {
       const head = { joint: arm.joints[gap.jointIndex]!.name, jointIndex: gap.jointIndex, bearing: gap.bearing };
-      return missing({ ...head, check: gap.check, unit: gap.unit }, gap.unassessed ?? NO_DUTY);
+      return missingRow({ ...head, check: gap.check, unit: gap.unit }, gap.unassessed ?? NO_DUTY);
     });
-    return [...gaps, missing(systemHead(arm), NO_DUTY)];
+    return [...gaps, missingRow(systemHead(arm), NO_DUTY)];
   }
   const rows = duty.bearings.flatMap((one) => {
     if (one.kind === 'bushing') return bushingRows(arm, chain, duty, one);
@@ -44,7 +44,8 @@ export function dutyRows(arm: Arm, chain: Chain, duty: DutyResult | null): reado
 
 type Head = Pick<CheckRow, 'joint' | 'jointIndex' | 'bearing' | 'check' | 'unit'>;
 
-function missing(head: Head, reason: string): CheckRow {
+/** A row without a value, unassessed for `reason`. */
+export function missingRow(head: Head, reason: string): CheckRow {
   return {
     ...head,
     value: Number.NaN,
@@ -101,7 +102,7 @@ function hardest(arm: Arm, one: DutyBearing, exponent: number): number {
 
 function lifeRow(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): CheckRow {
   const head = headOf(one, 'life', 's');
-  if (one.life === null) return missing(head, one.unassessed ?? 'the life could not be computed');
+  if (one.life === null) return missingRow(head, one.unassessed ?? 'the life could not be computed');
   const target = targetsOf(arm).life;
   const anywhere = duty.segments.some((segment) => segment.kind === 'anywhere');
   const certain = one.life.life;
@@ -158,9 +159,9 @@ const OPEN =
 
 function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): readonly CheckRow[] {
   const pv = headOf(one, 'pv', 'Pa·m/s');
-  if (one.bushing === null) return [missing(pv, one.unassessed ?? 'the PV could not be computed')];
+  if (one.bushing === null) return [missingRow(pv, one.unassessed ?? 'the PV could not be computed')];
   const bearing = arm.bearings[nameOf(arm, one)]!;
-  if (bearing.kind !== 'plain-bushing') return [missing(pv, 'the bearing is no plain bushing')];
+  if (bearing.kind !== 'plain-bushing') return [missingRow(pv, 'the bearing is no plain bushing')];
   const { bushing } = one;
   const anywhere = duty.segments.some((segment) => segment.kind === 'anywhere');
   const target = targetsOf(arm).pv;
@@ -215,11 +216,11 @@ function systemRow(arm: Arm, duty: DutyResult): CheckRow {
   const head = systemHead(arm);
   const { system } = duty;
   if (system.unassessed !== null || Number.isNaN(system.life)) {
-    return missing(head, system.unassessed ?? 'the life could not be computed');
+    return missingRow(head, system.unassessed ?? 'the life could not be computed');
   }
   const anywhere = duty.segments.some((segment) => segment.kind === 'anywhere');
   return {
-    ...missing(head, ''),
+    ...missingRow(head, ''),
     value: anywhere ? system.attained : system.life,
     bound: anywhere ? system.life : null,
     gap: null,

@@ -175,7 +175,7 @@ interface WorstTip {
 }
 
 /** The 26 directions to faces, edges and corners of a cube. */
-const CUBE: readonly Vec3[] = [-1, 0, 1].flatMap((x) =>
+export const CUBE: readonly Vec3[] = [-1, 0, 1].flatMap((x) =>
   [-1, 0, 1].flatMap((y) =>
     [-1, 0, 1].flatMap((z): Vec3[] => {
       const size = Math.hypot(x, y, z);

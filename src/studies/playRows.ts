@@ -15,7 +15,8 @@ const NOWHERE: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [
 
 type Head = Pick<CheckRow, 'joint' | 'jointIndex' | 'bearing' | 'check' | 'unit' | 'value'>;
 
-function reported(head: Head): CheckRow {
+/** A row that says a value and holds it against nothing. */
+export function reported(head: Head): CheckRow {
   return {
     ...head,
     case: '',
@@ -84,6 +85,6 @@ function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
     certified: false,
     allowable: target.value,
     ...judge({ allowable: target.value, floor: 0, beyond: null, unassessed }, tip.found, tip.bound, 'travel'),
-    source: [target.source, ...notes].join('; '),
+    source: [`tip error asked for: ${target.source}`, ...notes].join('; '),
   };
 }

@@ -88,6 +88,17 @@ export function isMissing(row: CheckRow): boolean {
   return row.verdict === 'unassessed' && row.pose.length === 0 && Number.isNaN(row.value);
 }
 
+/** Whether the row's value is a time that should be long: then its allowable is the least that is asked for. */
+export function moreIsBetter(row: Pick<CheckRow, 'check'>): boolean {
+  return /\blife$/.test(row.check);
+}
+
+/** The share of the allowable that the value found takes up: demand over allowable, or of a life the one asked for over it; null where none. */
+export function attainedShare(row: Pick<CheckRow, 'check' | 'value' | 'allowable'>): number | null {
+  if (row.allowable === null || !(row.allowable > 0)) return null;
+  return moreIsBetter(row) ? row.allowable / row.value : row.value / row.allowable;
+}
+
 export interface SweepResult {
   /** Poses of the whole grid (per case). */
   readonly poses: number;

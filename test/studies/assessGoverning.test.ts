@@ -53,6 +53,24 @@ describe('governing check', () => {
     expect(all[1]!.why).toBe('stress at hub is the only check with a limit');
   });
 
+  it('takes what is attained before what a loose bound leaves possible', () => {
+    const life = row({
+      check: 'life',
+      unit: 's',
+      value: 1000,
+      bound: 20,
+      allowable: 100,
+      utilisation: 5,
+      verdict: 'unassessed',
+      reason: 'enough by the loads found',
+    });
+    const [only] = governing([life, row({ value: 94, utilisation: 0.94 })]);
+    expect(only).toMatchObject({ row: { check: 'static' }, utilisation: 0.94, verdict: 'unassessed' });
+    expect(only!.open).toEqual([{ check: 'life', reason: 'enough by the loads found' }]);
+    const [short] = governing([{ ...life, value: 102, bound: 101, utilisation: 0.99, verdict: 'pass' }, row({})]);
+    expect(short).toMatchObject({ row: { check: 'life' }, utilisation: 0.99, verdict: 'pass' });
+  });
+
   it('shows what is open, and does not pass with it', () => {
     const [only] = governing([row({}), missing]);
     expect(only).toMatchObject({

@@ -4,7 +4,7 @@
  */
 import { scaleLinear } from 'd3-scale';
 import type { Governing } from '../../studies/assessGoverning.ts';
-import type { CheckRow, Verdict } from '../../studies/results.ts';
+import { attainedShare, type CheckRow, type Verdict } from '../../studies/results.ts';
 
 export type SheetTone = 'paper' | 'night';
 
@@ -36,7 +36,7 @@ export interface Held {
 export function heldOf(of: CheckRow | Governing | null | undefined): Held | null {
   if (!of) return null;
   const row = 'row' in of ? of.row : of;
-  const attained = row?.allowable ? row.value / row.allowable : null;
+  const attained = row ? attainedShare(row) : null;
   return { verdict: of.verdict, most: of.utilisation, found: attained ?? of.utilisation };
 }
 

@@ -23,7 +23,7 @@ export interface LoadTableProps {
 }
 
 export function LoadTable({ sheet, joints, pose, named = false }: LoadTableProps) {
-  const rows = useWorst((state) => state.rows) ?? [];
+  const rows = useWorst((state) => state.searched) ?? [];
   const units = useView((state) => state.units);
   const cases = sheet.arm.cases.length > 1;
   const listed = joints.flatMap((i) => {

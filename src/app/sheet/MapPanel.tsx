@@ -37,7 +37,7 @@ function Field({ sheet, index }: { sheet: ArmOnSheet; index: number }) {
   const wanted = useView((state) => state.check);
   const caseName = useView((state) => state.case);
   const units = useView((state) => state.units);
-  const rows = useWorst((state) => state.rows);
+  const rows = useWorst((state) => state.searched);
   const tone = useTone();
   const pose = usePose();
   const [frame, size] = useSize<HTMLDivElement>();

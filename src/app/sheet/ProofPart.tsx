@@ -7,7 +7,7 @@ import { useWorst } from '../store/worstStore.ts';
 export function ProofPart() {
   const { status, gap, of, trouble } = useProof();
   const file = useDocument((state) => state.draft ?? state.file);
-  const rows = useWorst((state) => state.rows) ?? [];
+  const rows = useWorst((state) => state.searched) ?? [];
   const running = status === 'running';
   const text = proofText(rows, status === 'failed' ? trouble : null, of !== null && of === file, gap, running);
   return (

@@ -18,7 +18,7 @@ export function SharesPanel() {
   const at = useView((state) => state.joint);
   const bearing = useView((state) => state.bearing);
   const wanted = useView((state) => state.check);
-  const rows = useWorst((state) => state.rows);
+  const rows = useWorst((state) => state.searched);
   const settled = useDocument((state) => state.file);
   const joint = sheet?.arm.joints[at];
   if (!sheet || !joint || !settled) return null;

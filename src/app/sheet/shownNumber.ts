@@ -24,6 +24,8 @@ const QUANTITIES: Readonly<Record<string, Quantity>> = {
   'Pa·m/s': 'pv',
   m: 'length',
   rad: 'slope',
+  s: 'life',
+  'm/s': 'speed',
 };
 
 /** The quantity behind the SI unit of a check row; null where it is shown as it is. */

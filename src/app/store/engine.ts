@@ -9,8 +9,11 @@ import { momentForms } from '../../mechanics/bearingPair.ts';
 import type { Chain } from '../../mechanics/chain.ts';
 import { checkValue } from '../../mechanics/form.ts';
 import { type ArmCapacity, armCapacity, assessPose } from '../../studies/assess.ts';
+import { armGives } from '../../studies/play.ts';
+import type { JointGive } from '../../studies/playJoint.ts';
 import { poseArm } from '../../studies/poseArm.ts';
 import type { CheckRow, PoseJoint, PoseResult, Wrench } from '../../studies/results.ts';
+import { type TipPose, tipAtPose } from '../../studies/tipAtPose.ts';
 
 /** Loads of one case at a pose; undefined where no case has the name. */
 export function poseLoads(arm: Arm, chain: Chain, pose: readonly number[], name: string): PoseResult | undefined {
@@ -32,6 +35,18 @@ export function capacityOf(arm: Arm, chain: Chain): ArmCapacity {
 /** Every capacity check at one pose under one case. */
 export function assessedRows(arm: Arm, chain: Chain, pose: readonly number[], name: string): readonly CheckRow[] {
   return assessPose(arm, chain, capacityOf(arm, chain), pose, [name])[0]?.rows ?? [];
+}
+
+const gives = new WeakMap<Arm, readonly JointGive[]>();
+
+/** Tip error at one pose under one case, with what makes it; undefined where no case has the name. */
+export function tipAt(arm: Arm, chain: Chain, pose: readonly number[], name: string): TipPose | undefined {
+  let known = gives.get(arm);
+  if (!known) {
+    known = armGives(arm, chain);
+    gives.set(arm, known);
+  }
+  return tipAtPose(arm, chain, pose, [name], known)[0];
 }
 
 const MOMENT = { check: 'moment', joint: 0, bearing: null, unit: 'N·m', forms: momentForms() };

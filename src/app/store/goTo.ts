@@ -14,7 +14,7 @@ export function tipForceAt(pose: readonly number[], name: string): Triple | null
 
 export function goToWorst(row: CheckRow, play = true): void {
   gone = row;
-  selectJoint(row.jointIndex, row.bearing);
+  if (row.jointIndex >= 0) selectJoint(row.jointIndex, row.bearing);
   showCase(row.case);
   if (play) playTo(row.pose);
   else setPose(row.pose);

@@ -1,8 +1,9 @@
 /** Which check governs each bearing: over the grid, and at the pose on stage. */
 import { type Governing, governing } from '../../studies/assessGoverning.ts';
 import type { CheckRow } from '../../studies/results.ts';
+import type { TipPose } from '../../studies/tipAtPose.ts';
 import { type ArmOnSheet, useArm } from './documentStore.ts';
-import { assessedRows } from './engine.ts';
+import { assessedRows, tipAt } from './engine.ts';
 import { usePose } from './poseStore.ts';
 import { useView } from './viewStore.ts';
 import { useWorst } from './worstStore.ts';
@@ -40,16 +41,37 @@ export function governingOf(rows: readonly CheckRow[] | undefined, joint: number
   return governed(rows).get(key(joint, bearing));
 }
 
-let last: { sheet: ArmOnSheet; pose: readonly number[]; case: string; rows: readonly CheckRow[] } | null = null;
+interface AtPose {
+  readonly sheet: ArmOnSheet;
+  readonly pose: readonly number[];
+  readonly case: string;
+  readonly rows: readonly CheckRow[];
+  readonly tip: TipPose | undefined;
+}
 
-/** Every check at the pose on stage, worked out once for each pose, arm and case. */
-export function usePoseRows(): readonly CheckRow[] {
+let last: AtPose | null = null;
+
+function useAtPose(): AtPose | null {
   const sheet = useArm();
   const pose = usePose();
   const name = useView((state) => state.case);
-  if (!sheet || pose.length !== sheet.chain.n) return [];
+  if (!sheet || pose.length !== sheet.chain.n) return null;
   if (last?.sheet !== sheet || last.pose !== pose || last.case !== name) {
-    last = { sheet, pose, case: name, rows: assessedRows(sheet.arm, sheet.chain, pose, name) };
+    const tip = tipAt(sheet.arm, sheet.chain, pose, name);
+    const rows = [...assessedRows(sheet.arm, sheet.chain, pose, name), ...(tip ? [tip.row] : [])];
+    last = { sheet, pose, case: name, rows, tip };
   }
-  return last.rows;
+  return last;
+}
+
+const NO_ROWS: readonly CheckRow[] = [];
+
+/** Every check at the pose on stage, the tip error included, worked out once for each pose, arm and case. */
+export function usePoseRows(): readonly CheckRow[] {
+  return useAtPose()?.rows ?? NO_ROWS;
+}
+
+/** What makes the tip error at the pose on stage. */
+export function useTipMade(): TipPose['made'] {
+  return useAtPose()?.tip?.made ?? null;
 }

@@ -5,6 +5,8 @@ import type { CheckForm } from '../../mechanics/form.ts';
 import type { JobPool } from '../../mechanics/job.ts';
 import { type CompareResult, compareArm } from '../../studies/compareArm.ts';
 import { type CompareOptions, type CompareRefusal, planCompare } from '../../studies/comparePlan.ts';
+import type { LastingPart } from '../../studies/lastingRows.ts';
+import { runLasting } from '../../studies/lastingRun.ts';
 import type { CheckRow, SweepResult } from '../../studies/results.ts';
 import { sweepArm } from '../../studies/sweepArm.ts';
 import { sweepChecks } from '../../studies/sweepChecks.ts';
@@ -19,6 +21,7 @@ export interface Run<Result> {
 
 export type SweepRun = Run<Swept>;
 export type ProofRun = Run<WorstResult>;
+export type LastingRun = Run<void>;
 export type CompareRun = Run<CompareResult | CompareRefusal>;
 
 export interface GridOrder {
@@ -104,5 +107,14 @@ export function startProof(
 ): Run<WorstResult> {
   const pool = browserPool();
   const result = runWorst(arm, { pool, ...order, onBetter }).finally(() => pool.close());
+  return { result, stop: () => pool.close() };
+}
+
+/** Life, fatigue and play, part by part, in a worker of their own that a stop ends at once. */
+export function startLasting(arm: Arm, onPart: (part: LastingPart, rows: readonly CheckRow[]) => void): LastingRun {
+  const pool = browserPool(1);
+  const result = runLasting(arm, { pool, onPart })
+    .then(() => undefined)
+    .finally(() => pool.close());
   return { result, stop: () => pool.close() };
 }

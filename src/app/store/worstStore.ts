@@ -1,20 +1,26 @@
-/** The worst of every check as it is known now: what the grid found, under the bound that the proof has reached so far. */
+/**
+ * The worst of every check as it is known now: what the grid found, under the bound that the proof has reached so far; beside it what no search
+ * over poses covers.
+ */
 import { create } from 'zustand';
 import { byJoint, rowsWithVerdict } from '../../studies/assess.ts';
 import type { CheckRow } from '../../studies/results.ts';
 import type { WorstResult } from '../../studies/worstArm.ts';
 import { type ArmOnSheet, armOf, presentArm } from './documentStore.ts';
 import { capacityOf } from './engine.ts';
+import { lastingOf, useLasting } from './lastingStore.ts';
 import { useProof } from './proofStore.ts';
 import type { Swept } from './runs.ts';
 import { casesWaiting, useSweep } from './sweepStore.ts';
 
 export interface WorstState {
-  /** Undefined before anything was worked out. */
+  /** All rows; undefined before anything was worked out. */
   readonly rows: readonly CheckRow[] | undefined;
+  /** Those of sweep and proof alone: each has a load at a pose. */
+  readonly searched: readonly CheckRow[] | undefined;
 }
 
-export const useWorst = create<WorstState>(() => ({ rows: undefined }));
+export const useWorst = create<WorstState>(() => ({ rows: undefined, searched: undefined }));
 
 function key(row: CheckRow): string {
   return `${row.jointIndex} ${row.bearing} ${row.check}`;
@@ -79,17 +85,19 @@ export function followWorst(): void {
     const present = presentArm()?.file;
     const of = proof.best && proof.of === present && sweep.of !== present ? proof.of : sweep.of;
     if (!of) {
-      useWorst.setState({ rows: undefined });
+      useWorst.setState({ rows: undefined, searched: undefined });
       return;
     }
     const swept = sweep.of === of ? sweep.result : null;
     const proven = proof.best && proof.of === of ? proofRows(proof.best, swept ? sweep.ofCase : sweep.case) : [];
     const waiting = swept ? casesWaiting(armOf(of), sweep) : [];
-    useWorst.setState({ rows: worstRows(armOf(of), swept, proven, proof.gap, waiting) });
+    const searched = worstRows(armOf(of), swept, proven, proof.gap, waiting);
+    useWorst.setState({ searched, rows: byJoint([...searched, ...lastingOf(of, useLasting.getState())]) });
   };
   useSweep.subscribe((state, before) => {
     if (state.result !== before.result) update();
   });
+  useLasting.subscribe(update);
   useProof.subscribe((state, before) => {
     if (state.best !== before.best) update();
   });
