@@ -11,6 +11,7 @@ import { WRENCH } from './chain.ts';
 import { type Form, form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { OutwardSets } from './outwardSets.ts';
+import { TipPush } from './tipPush.ts';
 
 /** What a search needs of a form's bounds; see GravityCheck. */
 export type SphereCheck = Pick<GravityCheck, 'ceiling' | 'stepCount' | 'best' | 'follow'>;
@@ -33,9 +34,19 @@ export class FanCheck implements SphereCheck {
   /** Price of overshooting the linear part. */
   private readonly kappa: number;
 
-  constructor(sets: OutwardSets, joint: number, f: Form, g: number, down: ArrayLike<number>) {
+  /** `tip`: as of `TipPush`; null: no push. */
+  constructor(
+    sets: OutwardSets,
+    joint: number,
+    f: Form,
+    g: number,
+    down: ArrayLike<number>,
+    inLink = false,
+    tip: OutwardSets | null = null,
+  ) {
     const rows = [0, 1, 2].map((r) => f.P.slice(WRENCH * r, WRENCH * (r + 1)));
-    const search = (part: Form) => new GravityCheck(sets, joint, part, g, down);
+    const search = (part: Form) =>
+      new GravityCheck(sets, joint, part, g, down, inLink, tip && new TipPush(tip, joint, part, inLink));
     this.make = (angle) => {
       const c = Math.cos(angle);
       const s = Math.sin(angle);

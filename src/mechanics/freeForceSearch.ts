@@ -1,24 +1,31 @@
 /**
- * Bounds for a case at rest whose tip force may point anywhere: weights and force each from their own sphere problem.
+ * Bounds for a case at rest whose tip force may point anywhere: weights and force, each at its own pose outboard of the joint.
  *
- * For a fixed pose a check is at most its worst over gravity plus its worst over the force, and a force free to point anywhere is a weight at
- * the tip under free gravity. The sum of the two bounds is a bound, and tight where both want the same pose: for every torque, and
- * for joints near the tip. What gap is left where they want different poses, branch and bound closes.
+ * A check is the most over e of what the weights and what the force do along e. Along a given e, and under a given direction of gravity, each is
+ * bounded by its own outward set; a force free to point anywhere is a weight at the tip under free gravity. The sum, a function of gravity's
+ * direction like that of weights alone, is carried back to the base by `GravityCheck`. It is tight where weights and force want
+ * the same pose outboard. What gap is left where they do not, branch and bound closes.
+ *
+ * Where a form cannot tell the joint's housing from its link, all is seen from the link: then both have the joint itself at the same angle.
  */
+import { sameAllRound } from './branchBoundForms.ts';
 import type { Chain, ChainCase } from './chain.ts';
+import { FanCheck, type SphereCheck } from './fanCheck.ts';
+import type { Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
-import { type CheckState, gapOf, ROUNDING } from './gravitySearch.ts';
+import { type CheckState, gapOf, overshoot, ROUNDING } from './gravitySearch.ts';
 import type { GravityMass, OutwardSets } from './outwardSets.ts';
+import { TipPush } from './tipPush.ts';
 
 /** Finer tables than this no longer pay: branch and bound takes over. */
 const LAST_LEVEL = 4;
 /** The same for forms of three rows, whose tables cost far more. */
-const LAST_LEVEL_OF_THREE = 1;
+const LAST_LEVEL_OF_THREE = 3;
 /** Share by which a finer level must better a bound to be followed by a still finer one. */
 const WORTH = 2e-4;
 
 export class FreeForceSearch {
-  private readonly pairs: readonly { readonly gravity: GravityCheck; readonly force: GravityCheck; bound: number }[];
+  private readonly parts: readonly { readonly search: SphereCheck; bound: number }[];
   private readonly last: number;
   private readonly state: CheckState;
   private level = -1;
@@ -26,17 +33,18 @@ export class FreeForceSearch {
 
   /** `state` of a homogeneous check: its bound is lowered here. `weights`, `tip`: outward sets of the links and of the tip alone. */
   constructor(chain: Chain, state: CheckState, weights: OutwardSets, tip: OutwardSets) {
-    const { check } = state;
+    const { forms, joint } = state.check;
     const g = Math.hypot(...chain.gravity);
     const down = g > 0 ? chain.gravity.map((v) => v / g) : [0, 0, -1];
     this.state = state;
-    this.pairs = check.forms.map((f) => ({
-      gravity: new GravityCheck(weights, check.joint, f, g, down),
-      force: new GravityCheck(tip, check.joint, f, 1, down),
-      bound: Number.POSITIVE_INFINITY,
-    }));
-    this.last = check.forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;
-    state.ceiling = Math.max(0, ...this.pairs.map(({ gravity, force }) => gravity.ceiling + force.ceiling));
+    const inLink = forms.every(sameAllRound);
+    const search = (f: Form): SphereCheck =>
+      f.rows === 3
+        ? new FanCheck(weights, joint, f, g, down, inLink, tip)
+        : new GravityCheck(weights, joint, f, g, down, inLink, new TipPush(tip, joint, f, inLink));
+    this.parts = forms.map((f) => ({ search: search(f), bound: Number.POSITIVE_INFINITY }));
+    this.last = forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;
+    state.ceiling = Math.max(0, ...this.parts.map(({ search }) => search.ceiling));
     this.stalled = !Number.isFinite(state.ceiling);
   }
 
@@ -44,24 +52,26 @@ export class FreeForceSearch {
     return !this.stalled && this.level < this.last && gapOf(this.state) > gap;
   }
 
-  /** One level finer. */
-  round(): void {
+  /** One level finer, for a gap of `gap`. */
+  round(gap: number): void {
     this.level++;
+    const { state, level } = this;
+    const wanted = state.found > 0 ? state.found / (1 - 0.95 * gap) : 0;
     let most = Number.NEGATIVE_INFINITY;
-    for (const pair of this.pairs) {
-      // A form that stays below what is attained needs no finer look.
-      if (pair.bound > this.state.found) {
-        const push = pair.force.cap(this.level, Number.NEGATIVE_INFINITY);
-        const enough = this.state.found - push;
-        const sum = pair.gravity.best(this.level, enough, enough) + push;
-        if (!(sum >= pair.bound)) pair.bound = sum;
+    for (const part of this.parts) {
+      // A form that stays below what is attained, or allowed by the gap, needs no finer look.
+      if (part.bound > wanted) {
+        const { search } = part;
+        const enough = Math.max(state.found, wanted * (1 - overshoot(level, search.stepCount)));
+        const bound = search.best(level, wanted, enough);
+        if (!(bound >= part.bound)) part.bound = bound;
       }
-      if (!(pair.bound <= most)) most = pair.bound;
+      if (!(part.bound <= most)) most = part.bound;
     }
-    const bound = most + ROUNDING * this.state.ceiling;
+    const bound = most + ROUNDING * state.ceiling;
     // Level 1 is where the tables begin to speak; a bound that stands still from there on is the pose's fault.
-    this.stalled = this.level > 1 && !(bound < this.state.bound * (1 - WORTH));
-    this.state.bound = Math.min(this.state.bound, bound);
+    this.stalled = level > 1 && !(bound < state.bound * (1 - WORTH));
+    state.bound = Math.min(state.bound, bound);
   }
 }
 

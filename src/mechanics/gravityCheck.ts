@@ -22,6 +22,7 @@ import {
   turnBack,
 } from './inwardSteps.ts';
 import type { OutwardSets } from './outwardSets.ts';
+import type { TipPush } from './tipPush.ts';
 
 /** Inboard steps that are taken on exact arcs rather than from tables. */
 const EXACT = 2;
@@ -35,17 +36,30 @@ export class GravityCheck {
   private readonly steps: InwardStep[] = [];
   private readonly value: DirectionValue;
   private readonly u0: Float64Array;
+  private readonly inLink: boolean;
   private capHelps: boolean;
   private readonly roof: Roof;
 
-  /** `g` m/s² ≥ 0; `down` its unit direction in the base frame; `form` with c = 0 and o = 0. */
-  constructor(sets: OutwardSets, joint: number, form: Form, g: number, down: ArrayLike<number>) {
+  /**
+   * `g` m/s² ≥ 0; `down` its unit direction in the base frame; `form` with c = 0 and o = 0. `inLink` and `push` as of `DirectionValue`: with
+   * a push the check is that of weights and push together, each at its own pose outboard.
+   */
+  constructor(
+    sets: OutwardSets,
+    joint: number,
+    form: Form,
+    g: number,
+    down: ArrayLike<number>,
+    inLink = false,
+    push: TipPush | null = null,
+  ) {
     this.joint = joint;
     this.sets = sets;
-    this.value = new DirectionValue(sets, joint, form, g);
+    this.inLink = inLink;
+    this.value = new DirectionValue(sets, joint, form, g, inLink, push);
     this.u0 = new Float64Array(3);
     intoNext(this.u0, down, sets.chain.rotation, 0);
-    const runs = parallelRuns(sets, joint);
+    const runs = parallelRuns(sets, joint, inLink);
     this.roof = { most: this.value.scale };
     // One step inboard reaches an arc of directions at most, and is cheap to follow exactly.
     this.capHelps = runs.length > 1;
@@ -106,7 +120,9 @@ export class GravityCheck {
     const u = Float64Array.from(this.u0);
     for (const step of this.steps) step.carryBest(u, pose, level, enough);
     const d = this.value.direction(u[0]!, u[1]!, u[2]!, level, enough);
-    for (let k = this.joint; k < chain.n; k++) {
+    const first = this.inLink ? this.joint + 1 : this.joint;
+    if (this.inLink && first < chain.n) intoNext(d, d, chain.rotation, first);
+    for (let k = first; k < chain.n; k++) {
       const q = this.sets.argument(k, d[0]!, d[1]!, d[2]!, level);
       pose[k] = q;
       turnBack(d, q);

@@ -224,7 +224,7 @@ export class GravitySearch {
 }
 
 /** Most that a unit function of value 1 is overshot by the tables and arcs of a level on the way back to the base. */
-function overshoot(level: number, steps: number): number {
+export function overshoot(level: number, steps: number): number {
   const cell = 2 / (COARSE_CELLS << level);
   return ((1.6 * cell * cell) / 8) * Math.max(1, steps);
 }

@@ -2,7 +2,7 @@
 import { ArcMax } from '../math/arcMax.ts';
 import { PolarTable } from '../math/polarTable.ts';
 import { SphereTable } from '../math/sphereTable.ts';
-import { multiply33 } from '../math/vector.ts';
+import { IDENTITY33, multiply33 } from '../math/vector.ts';
 import { COARSE_CELLS, type OutwardSets, POLAR_RATIO } from './outwardSets.ts';
 
 /** Turns v back by q about z, in place. */
@@ -41,22 +41,25 @@ export interface ParallelRun {
 
 const PARALLEL = 1e-13;
 
-/** The steps inboard of a joint, from the base on. */
-export function parallelRuns(sets: OutwardSets, joint: number): ParallelRun[] {
+/** The steps from the base to the housing of a joint; `inLink`: to its link. */
+export function parallelRuns(sets: OutwardSets, joint: number, inLink = false): ParallelRun[] {
   const { chain } = sets;
   const runs: ParallelRun[] = [];
+  const end = inLink ? joint + 1 : joint;
+  const after = (j: number) =>
+    j === joint ? Float64Array.from(IDENTITY33) : chain.rotation.slice(9 * (j + 1), 9 * (j + 2));
   let k = 0;
-  while (k < joint) {
+  while (k < end) {
     const joints = [k];
     const senses = [1];
-    let r = chain.rotation.slice(9 * (k + 1), 9 * (k + 2));
+    let r = after(k);
     // R z = ±z: the next axis is parallel to the first of the run
-    while (k + joints.length < joint && Math.hypot(r[2]!, r[5]!) < PARALLEL) {
+    while (k + joints.length < end && Math.hypot(r[2]!, r[5]!) < PARALLEL) {
       const next = k + joints.length;
       joints.push(next);
       senses.push(r[8]! > 0 ? 1 : -1);
       const product = new Float64Array(9);
-      multiply33(product, 0, r, 0, chain.rotation, 9 * (next + 1));
+      multiply33(product, 0, r, 0, after(next), 0);
       r = product;
     }
     let from = 0;

@@ -71,6 +71,11 @@ export class OutwardSets {
     return this.levels[k]!.support(x, y, z, level);
   }
 
+  /** Upper bound of L_k(x) at the given level: what joint k carries, seen from its link. */
+  beyond(k: number, x: number, y: number, z: number, level: number): number {
+    return this.levels[k]!.link(x, y, z, level);
+  }
+
   /** Corner values computed so far, all joints and levels. */
   get filled(): number {
     return this.levels.reduce((sum, link) => sum + link.filled, 0);
@@ -218,7 +223,7 @@ class LevelledLink {
     return this.link(c * this.dx + s * this.dy, c * this.dy - s * this.dx, this.dz, level);
   }
 
-  private link(x: number, y: number, z: number, level: number): number {
+  link(x: number, y: number, z: number, level: number): number {
     const own = this.bx * x + this.by * y + this.bz * z;
     if (this.next === null) return own;
     const r = this.r;

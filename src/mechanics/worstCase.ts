@@ -176,7 +176,7 @@ export class WorstCase {
   private advance(task: Task, gap: number): void {
     const { state } = task;
     if (task.goes === 1 && !this.gravity) {
-      this.begin(task);
+      this.begin(task, gap);
       return;
     }
     // Boxes know nothing of speeds and accelerations: their bound would not be one.
@@ -195,11 +195,11 @@ export class WorstCase {
       state.ceiling = Math.max(state.ceiling, task.branch.ceiling);
       this.take(task);
       if (gapOf(state) <= gap) return;
-      if (task.spheres?.open(gap)) task.spheres.round();
+      if (task.spheres?.open(gap)) task.spheres.round(gap);
       return;
     }
     if (task.spheres?.open(gap)) {
-      task.spheres.round();
+      task.spheres.round(gap);
       return;
     }
     const begin = performance.now();
@@ -210,10 +210,13 @@ export class WorstCase {
   }
 
   /** First bound, and the best of a few poses. */
-  private begin({ state }: Task): void {
-    this.travel ??= this.firstBounds();
-    state.bound = Math.min(state.bound, this.travel.get(state) ?? Number.POSITIVE_INFINITY);
-    state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);
+  private begin({ state, spheres }: Task, gap: number): void {
+    if (spheres?.open(gap)) spheres.round(gap);
+    else {
+      this.travel ??= this.firstBounds();
+      state.bound = Math.min(state.bound, this.travel.get(state) ?? Number.POSITIVE_INFINITY);
+      state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);
+    }
     const random = seededRandom(state.check.joint + 1);
     const { from, to } = this.chain;
     for (let k = 0; k < FIRST_POSES; k++) {
@@ -227,7 +230,10 @@ export class WorstCase {
 
   /** Bounds of every state that has none yet: those of one joint share their tables. */
   private firstBounds(): ReadonlyMap<CheckState, number> {
-    const open = this.states.filter((state) => !Number.isFinite(state.bound));
+    const open = this.tasks
+      .filter(({ spheres }) => !spheres)
+      .map(({ state }) => state)
+      .filter((state) => !Number.isFinite(state.bound));
     const checks = open.map((state) => state.check);
     const bounds = sphereBounds(this.chain, this.load, checks, FIRST_ROUNDS);
     return new Map(open.map((state, k) => [state, bounds[k]!]));
