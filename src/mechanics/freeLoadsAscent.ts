@@ -130,13 +130,56 @@ function wrap(angle: number): number {
   return angle - 2 * Math.PI * Math.floor(angle / (2 * Math.PI));
 }
 
+/** The direction of the cube from which a form promises most. */
+function bestOfCube(p: ReducedForm, e: Flat): Numbers {
+  let best = CUBE[0]!;
+  let most = Number.NEGATIVE_INFINITY;
+  for (const start of CUBE) {
+    for (let k = 0; k < 3; k++) e[k] = start[k]!;
+    pick(p, e);
+    const value = pickedValue(p);
+    if (!(value > most)) continue;
+    most = value;
+    best = start;
+  }
+  return best;
+}
+
 /**
- * The 26 directions of a cube and, so that no cell of signs of the accelerations is missed, every point where two of them change
+ * Whether the tip direction v picked by a climb is the best of all, the tip force being all that is free. With s = ‖y‖ at v, the value
+ * ‖y0 + T u‖ + t·u of any u is at most (‖y0 + T u‖² + s²)/2s + t·u, equal at v (a mean of squares); that quadratic is largest over the
+ * sphere at v if its gradient there is μ v and μ ≥ all eigenvalues of TᵀT/s, so if μ - TᵀT/s has no negative minor of its diagonal.
+ */
+function isBestTip(p: ReducedForm): boolean {
+  const { tip, y, v } = p;
+  const s = Math.sqrt(y[0]! ** 2 + y[1]! ** 2 + y[2]! ** 2);
+  if (!(s > 0)) return false;
+  let mu = 0;
+  for (let k = 0; k < 3; k++) {
+    mu += v[k]! * ((tip[k]! * y[0]! + tip[3 + k]! * y[1]! + tip[6 + k]! * y[2]!) / s + tip[9 + k]!);
+  }
+  const product = (j: number, k: number) =>
+    (tip[j]! * tip[k]! + tip[3 + j]! * tip[3 + k]! + tip[6 + j]! * tip[6 + k]!) / s;
+  const [xx, yy, zz] = [mu - product(0, 0), mu - product(1, 1), mu - product(2, 2)];
+  const [xy, xz, yz] = [-product(0, 1), -product(0, 2), -product(1, 2)];
+  const det = xx * (yy * zz - yz * yz) - xy * (xy * zz - yz * xz) + xz * (xy * yz - yy * xz);
+  return Math.min(xx, yy, zz, xx * yy - xy * xy, xx * zz - xz * xz, yy * zz - yz * yz, det) >= 0;
+}
+
+/**
+ * The 26 directions of a cube (for a tip force alone the best of them, where what it climbs to is shown to be best) and, so that no cell of signs of the accelerations is missed, every point where two of them change
  * sign, moved a little to each of its four sides; cells without such a corner hold an extreme point of one change, moved to its two.
  */
 export function startsOnSphere(scratch: FreeScratch, from: () => void): void {
   const { form: p, e } = scratch;
+  const first = p.hasMotion ? null : bestOfCube(p, e);
+  if (first) {
+    for (let k = 0; k < 3; k++) e[k] = first[k]!;
+    from();
+    if (isBestTip(p)) return;
+  }
   for (const start of CUBE) {
+    if (start === first) continue;
     for (let k = 0; k < 3; k++) e[k] = start[k]!;
     from();
   }
