@@ -1,5 +1,6 @@
-/** Check rows as tables for people: the loads, then what is held against a limit. */
+/** Check rows as tables for people: the loads, then what is held against a limit, then what asks for more than one pose. */
 import { rowsTable } from '../report/rowsTable.ts';
+import { isLasting } from '../studies/lastingRows.ts';
 import type { CheckRow } from '../studies/results.ts';
 import { drawTable } from './drawTable.ts';
 
@@ -13,12 +14,15 @@ function oneWay(row: CheckRow): boolean {
   return /^(torque|thrust)[+-]$/.test(row.check);
 }
 
-export function rowTables(rows: readonly CheckRow[]): string {
-  const loads = rows.filter((row) => !isJudged(row) && !oneWay(row));
-  const judged = rows.filter((row) => isJudged(row) && !oneWay(row));
+export function rowTables(all: readonly CheckRow[]): string {
+  const rows = all.filter((row) => !isLasting(row) && !oneWay(row));
+  const loads = rows.filter((row) => !isJudged(row));
+  const judged = rows.filter(isJudged);
+  const lasting = all.filter(isLasting);
   const tables = [
     ...(loads.length > 0 ? [rowsTable(loads, { title: 'Loads', footnotes: true })] : []),
     ...(judged.length > 0 ? [rowsTable(judged, { title: 'Checks', footnotes: true })] : []),
+    ...(lasting.length > 0 ? [rowsTable(lasting, { title: 'Life, fatigue and play', footnotes: true })] : []),
   ];
   return tables.map(drawTable).join('\n\n');
 }

@@ -1,7 +1,6 @@
 /** `armload worst`: the certified worst pose of every check. */
 import { secondsText } from '../report/shown.ts';
 import { armCapacity, assessRows, byJoint } from '../studies/assess.ts';
-import { lastingRows } from '../studies/lastingRows.ts';
 import { DEFAULT_GAP, DEFAULT_SECONDS, type WorstResult } from '../studies/worstArm.ts';
 import { runWorst } from '../studies/worstRun.ts';
 import { chooseCases, onlyCases } from './chooseCases.ts';
@@ -12,6 +11,7 @@ import { openPool } from './openPool.ts';
 import { print, printCaution, printJson, warn } from './output.ts';
 import { progressBar } from './progressBar.ts';
 import { armObjects, exitOf, jointObjects } from './rowObjects.ts';
+import { lastingRowsFor } from './runLasting.ts';
 import { rowTables } from './shownRows.ts';
 import { withPatience } from './withPatience.ts';
 
@@ -55,11 +55,13 @@ export async function worst(file: string, options: WorstOptions): Promise<ExitCo
     pool.close();
   });
   const result = ended ?? best;
-  const stopped = interrupt.signal.aborted;
+  const lasting = interrupt.signal.aborted
+    ? null
+    : await lastingRowsFor({ arm, case: options.case, eachCase: options.eachCase, workers: options.workers });
+  const stopped = lasting === null;
   const capacity = armCapacity(arm, chain);
   const worstRows = assessRows(chain, capacity, options.eachCase ? result.eachCase : result.rows, { gap });
-  // Means and ranges of loads, not extremes: they belong to no single case and take a moment that a stop does not grant.
-  const rows = stopped || options.eachCase ? worstRows : byJoint([...worstRows, ...lastingRows(arm, chain)]);
+  const rows = byJoint([...worstRows, ...(lasting ?? [])]);
   if (options.json) {
     printJson(arm, {
       gap_asked: gap,

@@ -207,11 +207,12 @@ function missingRows(arm: Arm, checks: readonly CapacityCheck[]): readonly Check
   }));
 }
 
-/** Rows of one joint together, joints from ground to tip, else in the order given. */
+/** Rows of one joint together, joints from ground to tip, those of the whole arm last, else in the order given. */
 export function byJoint(rows: readonly CheckRow[]): readonly CheckRow[] {
+  const place = ({ jointIndex }: CheckRow) => (jointIndex < 0 ? Number.POSITIVE_INFINITY : jointIndex);
   return rows
     .map((row, i) => ({ row, i }))
-    .sort((a, b) => a.row.jointIndex - b.row.jointIndex || a.i - b.i)
+    .sort((a, b) => (place(a.row) === place(b.row) ? a.i - b.i : place(a.row) - place(b.row)))
     .map(({ row }) => row);
 }
 

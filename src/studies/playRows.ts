@@ -6,7 +6,7 @@
  */
 import type { Arm } from '../arm/arm.ts';
 import { targetsOf } from '../capacity/targets.ts';
-import { judge } from './assessVerdict.ts';
+import { judge, REASONS } from './assessVerdict.ts';
 import { WHOLE_ARM } from './dutyRows.ts';
 import type { JointPlayResult, PlayResult } from './play.ts';
 import type { CheckRow, Wrench } from './results.ts';
@@ -66,6 +66,9 @@ function jointRows(arm: Arm, one: JointPlayResult): readonly CheckRow[] {
   return [...rows, ...lost];
 }
 
+const NOT_TOGETHER =
+  'no pose found exceeds the allowable, but the most of every joint added up does: they need not occur together';
+
 function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
   const head = { joint: arm.name, jointIndex: WHOLE_ARM, bearing: null, check: 'tip error', unit: 'm' };
   if (tip.found === null || tip.bound === null) {
@@ -74,6 +77,7 @@ function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
   }
   const target = targetsOf(arm).tipError;
   const unassessed = target.value === null ? target.source : null;
+  const judged = judge({ allowable: target.value, floor: 0, beyond: null, unassessed }, tip.found, tip.bound, 'travel');
   const notes = [...new Set(joints.flatMap((one) => one.notes.map((note) => note.replace(/^(A|B|ring): /, ''))))];
   return {
     ...reported({ ...head, value: tip.found }),
@@ -84,7 +88,9 @@ function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
     gap: tip.bound > 0 ? (tip.bound - tip.found) / tip.bound : 0,
     certified: false,
     allowable: target.value,
-    ...judge({ allowable: target.value, floor: 0, beyond: null, unassessed }, tip.found, tip.bound, 'travel'),
+    ...judged,
+    // More time would not close this gap.
+    reason: judged.reason === REASONS['open gap'] ? NOT_TOGETHER : judged.reason,
     source: [`tip error asked for: ${target.source}`, ...notes].join('; '),
   };
 }

@@ -53,6 +53,26 @@ describe('armload pose', () => {
     expect(names(two.stdout)).toEqual([all[0], all[2]]);
   });
 
+  it('gives the tip error with its target, and from which joint it comes; 1 where it is over', async () => {
+    const file = modelFile('two-link');
+    const path = (mm: number) =>
+      scratch.write('tip.arm.json', { ...file, targets: { ...file.targets, tip_error_mm: mm } });
+    const at = ['--at=0,0', '--case', 'hold the grinder'];
+    const ran = await armload(['pose', path(5), ...at, '--json']);
+    expect(ran.code).toBe(0);
+    const { whole_arm, tip_error } = JSON.parse(ran.stdout).results[0];
+    const [row] = whole_arm;
+    expect(row).toMatchObject({ check: 'tip error', unit: 'm', allowable: 0.005, verdict: 'pass' });
+    expect(row.utilisation).toBeCloseTo(row.value / 0.005, 12);
+    expect(tip_error.shares.map(({ joint }: { joint: string }) => joint)).toEqual(['shoulder', 'elbow']);
+    const sum = tip_error.shares.reduce((total: number, share: { share_m: number }) => total + share.share_m, 0);
+    expect(sum).toBeCloseTo(row.value, 12);
+    const tight = await armload(['pose', path(row.value * 999), ...at]);
+    expect(tight.code).toBe(1);
+    expect(tight.stdout).toMatch(/tip error .* over/);
+    expect(tight.stdout).toMatch(/Tip error in mm, by joint: shoulder [\d.-]+, elbow [\d.-]+; of play/);
+  });
+
   it('prints tables for people, with the caution on standard error', async () => {
     const ran = await armload(['pose', model('two-link'), '--at=-10,20']);
     expect(ran.code).toBe(0);

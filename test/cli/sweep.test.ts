@@ -2,6 +2,7 @@ import { afterAll, describe, expect, it } from 'vitest';
 import { readArmValue } from '../../src/arm/readArm.ts';
 import { flattenArm } from '../../src/mechanics/chain.ts';
 import { gridOf, poseAt } from '../../src/mechanics/gridSweepGrid.ts';
+import { isLasting } from '../../src/studies/lastingRows.ts';
 import { poseArm } from '../../src/studies/poseArm.ts';
 import { toSI } from '../../src/units/unit.ts';
 import { armload, complaints, model, modelFile, scratchFolder } from './armload.ts';
@@ -109,12 +110,48 @@ describe('armload sweep', () => {
     const each = (await sweep(model('two-link'), '--samples', '9', '--each-case')).document;
     const cases = modelFile('two-link').cases.map((c: { name: string }) => c.name);
     all.joints.forEach((joint, i) => {
-      for (const row of joint.checks) {
+      for (const row of joint.checks.filter((r) => !isLasting(r))) {
         const mine = each.joints[i]!.checks.filter((r) => r.bearing === row.bearing && r.check === row.check);
         expect(mine.map((r) => r.case)).toEqual(cases);
         expect(Math.max(...mine.map((r) => r.value))).toBeCloseTo(row.value, 8);
       }
     });
+  });
+
+  it('adds what no single pose tells, the same as `worst`; left out, and said so, where single cases are asked for', async () => {
+    const at = async (verb: string, ...args: string[]) => {
+      const ran = await armload([verb, model('wall-arm'), ...args, '--json']);
+      const document = JSON.parse(ran.stdout) as { joints: { checks: Row[] }[]; whole_arm: Row[] };
+      return {
+        ran,
+        rows: [...document.joints.flatMap(({ checks }) => checks), ...document.whole_arm].filter(isLasting),
+      };
+    };
+    const swept = await at('sweep', '--samples', '2');
+    const names = new Set(swept.rows.map((row) => row.check));
+    expect([...names].sort()).toEqual([
+      'fatigue',
+      'life',
+      'lost motion',
+      'play tilt',
+      'pv',
+      'speed',
+      'system life',
+      'tip error',
+    ]);
+    expect((await at('worst', '--seconds', '2', '--gap', '0.5')).rows).toEqual(swept.rows);
+    const one = await at('sweep', '--samples', '2', '--case', 'full crate');
+    expect(one.rows).toEqual([]);
+    expect(complaints(one.ran).join()).toContain('belong to no single case');
+  });
+
+  it('is 1 where a life is too short and nothing else is over', async () => {
+    const file = modelFile('two-link');
+    const short = { ...file, targets: { ...file.targets, life_h: 1e9 } };
+    expect((await armload(['sweep', scratch.write('sound.arm.json', file), '--samples', '3'])).code).toBe(0);
+    const ran = await armload(['sweep', scratch.write('short.arm.json', short), '--samples', '3']);
+    expect(ran.code).toBe(1);
+    expect(ran.stdout).toMatch(/life .* over /);
   });
 
   it('prints a table for people, its own doubts, and the caution on standard error', async () => {
