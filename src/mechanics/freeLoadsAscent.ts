@@ -31,7 +31,13 @@ export interface FreeScratch {
 
 export function freeScratch(n: number): FreeScratch {
   const flat = (size: number) => new Float64Array(size);
-  return { form: newReducedForm(n), trial: newFreeWorst(n), e: flat(3), samples: flat(SAMPLES), cuts: flat(2 * n) };
+  return {
+    form: newReducedForm(n),
+    trial: newFreeWorst(n),
+    e: flat(3),
+    samples: flat(Math.max(SAMPLES, CUBE.length)),
+    cuts: flat(2 * n),
+  };
 }
 
 const SAMPLES = 24;
@@ -40,6 +46,10 @@ const CUBE: readonly Numbers[] = [-1, 0, 1].flatMap((x) =>
   [-1, 0, 1].flatMap((y) =>
     [-1, 0, 1].flatMap((z) => (x || y || z ? [[x, y, z].map((c) => c / Math.hypot(x, y, z))] : [])),
   ),
+);
+/** Of each, those nearest to it: corners and edges of the cube. */
+const BESIDE: readonly (readonly number[])[] = CUBE.map((a, k) =>
+  CUBE.flatMap((b, j) => (j !== k && a[0]! * b[0]! + a[1]! * b[1]! + a[2]! * b[2]! > 0.75 ? [j] : [])),
 );
 
 /** Local maxima of a ring of samples, and one direction of every arc on which the signs of the accelerations stay. */
@@ -130,57 +140,24 @@ function wrap(angle: number): number {
   return angle - 2 * Math.PI * Math.floor(angle / (2 * Math.PI));
 }
 
-/** The direction of the cube from which a form promises most. */
-function bestOfCube(p: ReducedForm, e: Flat): Numbers {
-  let best = CUBE[0]!;
-  let most = Number.NEGATIVE_INFINITY;
-  for (const start of CUBE) {
-    for (let k = 0; k < 3; k++) e[k] = start[k]!;
-    pick(p, e);
-    const value = pickedValue(p);
-    if (!(value > most)) continue;
-    most = value;
-    best = start;
-  }
-  return best;
-}
-
 /**
- * Whether the tip direction v picked by a climb is the best of all, the tip force being all that is free. With s = ‖y‖ at v, the value
- * ‖y0 + T u‖ + t·u of any u is at most (‖y0 + T u‖² + s²)/2s + t·u, equal at v (a mean of squares); that quadratic is largest over the
- * sphere at v if its gradient there is μ v and μ ≥ all eigenvalues of TᵀT/s, so if μ - TᵀT/s has no negative minor of its diagonal.
- */
-function isBestTip(p: ReducedForm): boolean {
-  const { tip, y, v } = p;
-  const s = Math.sqrt(y[0]! ** 2 + y[1]! ** 2 + y[2]! ** 2);
-  if (!(s > 0)) return false;
-  let mu = 0;
-  for (let k = 0; k < 3; k++) {
-    mu += v[k]! * ((tip[k]! * y[0]! + tip[3 + k]! * y[1]! + tip[6 + k]! * y[2]!) / s + tip[9 + k]!);
-  }
-  const product = (j: number, k: number) =>
-    (tip[j]! * tip[k]! + tip[3 + j]! * tip[3 + k]! + tip[6 + j]! * tip[6 + k]!) / s;
-  const [xx, yy, zz] = [mu - product(0, 0), mu - product(1, 1), mu - product(2, 2)];
-  const [xy, xz, yz] = [-product(0, 1), -product(0, 2), -product(1, 2)];
-  const det = xx * (yy * zz - yz * yz) - xy * (xy * zz - yz * xz) + xz * (xy * yz - yy * xz);
-  return Math.min(xx, yy, zz, xx * yy - xy * xy, xx * zz - xz * xz, yy * zz - yz * yz, det) >= 0;
-}
-
-/**
- * The 26 directions of a cube (for a tip force alone the best of them, where what it climbs to is shown to be best) and, so that no cell of signs of the accelerations is missed, every point where two of them change
+ * The highest of the 26 directions of a cube (all of them in motion) and, so that no cell of signs of the accelerations is missed, every point where two of them change
  * sign, moved a little to each of its four sides; cells without such a corner hold an extreme point of one change, moved to its two.
  */
 export function startsOnSphere(scratch: FreeScratch, from: () => void): void {
-  const { form: p, e } = scratch;
-  const first = p.hasMotion ? null : bestOfCube(p, e);
-  if (first) {
-    for (let k = 0; k < 3; k++) e[k] = first[k]!;
-    from();
-    if (isBestTip(p)) return;
+  const { form: p, e, samples } = scratch;
+  const point = (at: number) => {
+    for (let k = 0; k < 3; k++) e[k] = CUBE[at]![k]!;
+  };
+  for (let at = 0; at < CUBE.length; at++) {
+    point(at);
+    pick(p, e);
+    samples[at] = e[0]! * p.y[0]! + e[1]! * p.y[1]! + e[2]! * p.y[2]! + p.y[LIN]!;
   }
-  for (const start of CUBE) {
-    if (start === first) continue;
-    for (let k = 0; k < 3; k++) e[k] = start[k]!;
+  for (let at = 0; at < CUBE.length; at++) {
+    // without motion the support is smooth enough for the highest of neighbours to lead to every top
+    if (!p.hasMotion && BESIDE[at]!.some((other) => samples[other]! > samples[at]!)) continue;
+    point(at);
     from();
   }
   if (!p.hasMotion) return;
@@ -248,8 +225,8 @@ export function climb(p: ReducedForm, e: Flat): number {
   for (let step = 0; step < 400; step++) {
     const size = Math.sqrt(p.y[0]! ** 2 + p.y[1]! ** 2 + p.y[2]! ** 2);
     if (!(size > 0)) return value;
-    // on a circle the turn stays near where it is: the way along y may leave the maximum that a sample found
-    if (p.rows === 2 && p.hasTip && newton(p, e)) step += 20;
+    // the turn stays near where it is: the way along y may leave the maximum that a sample found, and is slow where N turns with e
+    if (p.hasTip && (p.rows === 2 ? newton(p, e) : newtonOnSphere(p, e))) step += 20;
     else for (let k = 0; k < 3; k++) e[k] = p.y[k]! / size;
     pick(p, e);
     const next = pickedValue(p);
@@ -297,5 +274,68 @@ function newton(p: ReducedForm, e: Flat): boolean {
     if (Math.abs(move) < 1e-15) break;
   }
   turn(e, angle);
+  return true;
+}
+
+const G = new Float64Array(3);
+const ALONG = new Float64Array(3);
+
+/** The same for three rows. With e normalised, the value's curvature along unit tangents t is tᵀ H t - e·grad. */
+function newtonOnSphere(p: ReducedForm, e: Flat): boolean {
+  const { tip, y, v } = p;
+  // the rows without the tip force
+  const y0 = y[0]! - tip[0]! * v[0]! - tip[1]! * v[1]! - tip[2]! * v[2]!;
+  const y1 = y[1]! - tip[3]! * v[0]! - tip[4]! * v[1]! - tip[5]! * v[2]!;
+  const y2 = y[2]! - tip[6]! * v[0]! - tip[7]! * v[1]! - tip[8]! * v[2]!;
+  for (let step = 0; step < 30; step++) {
+    const [x, yy, z] = [e[0]!, e[1]!, e[2]!];
+    const nx = x * tip[0]! + yy * tip[3]! + z * tip[6]! + tip[9]!;
+    const ny = x * tip[1]! + yy * tip[4]! + z * tip[7]! + tip[10]!;
+    const nz = x * tip[2]! + yy * tip[5]! + z * tip[8]! + tip[11]!;
+    const size = Math.sqrt(nx * nx + ny * ny + nz * nz);
+    if (!(size > 0)) return false;
+    for (let r = 0; r < 3; r++) ALONG[r] = (tip[3 * r]! * nx + tip[3 * r + 1]! * ny + tip[3 * r + 2]! * nz) / size;
+    G[0] = y0 + ALONG[0]!;
+    G[1] = y1 + ALONG[1]!;
+    G[2] = y2 + ALONG[2]!;
+    // two tangents across e
+    const flat = Math.abs(z) < 0.7;
+    const h = flat ? Math.sqrt(x * x + yy * yy) : Math.sqrt(yy * yy + z * z);
+    const [sx, sy, sz] = flat ? [yy / h, -x / h, 0] : [0, z / h, -yy / h];
+    const [tx, ty, tz] = [yy * sz - z * sy, z * sx - x * sz, x * sy - yy * sx];
+    const radial = x * G[0]! + yy * G[1]! + z * G[2]!;
+    const a = sx * G[0]! + sy * G[1]! + sz * G[2]!;
+    const b = tx * G[0]! + ty * G[1]! + tz * G[2]!;
+    const as = sx * ALONG[0]! + sy * ALONG[1]! + sz * ALONG[2]!;
+    const at = tx * ALONG[0]! + ty * ALONG[1]! + tz * ALONG[2]!;
+    let [ss, st, tt] = [0, 0, 0];
+    for (let k = 0; k < 3; k++) {
+      const s = sx * tip[k]! + sy * tip[3 + k]! + sz * tip[6 + k]!;
+      const t = tx * tip[k]! + ty * tip[3 + k]! + tz * tip[6 + k]!;
+      ss += s * s;
+      st += s * t;
+      tt += t * t;
+    }
+    const kss = (ss - as * as) / size - radial;
+    const kst = (st - as * at) / size;
+    const ktt = (tt - at * at) / size - radial;
+    const det = kss * ktt - kst * kst;
+    const hill = kss < 0 && det > 0;
+    const slope = Math.sqrt(a * a + b * b);
+    if (!(slope > 0)) break;
+    let ms = hill ? (kst * b - ktt * a) / det : (0.1 * a) / slope;
+    let mt = hill ? (kst * a - kss * b) / det : (0.1 * b) / slope;
+    const move = Math.sqrt(ms * ms + mt * mt);
+    if (move > 0.2) {
+      ms *= 0.2 / move;
+      mt *= 0.2 / move;
+    }
+    e[0] = x + ms * sx + mt * tx;
+    e[1] = yy + ms * sy + mt * ty;
+    e[2] = z + ms * sz + mt * tz;
+    const length = Math.sqrt(e[0]! * e[0]! + e[1]! * e[1]! + e[2]! * e[2]!);
+    for (let k = 0; k < 3; k++) e[k]! /= length;
+    if (move < 1e-12) break;
+  }
   return true;
 }
