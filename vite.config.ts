@@ -1,4 +1,5 @@
 import react from '@vitejs/plugin-react';
+import type { Plugin } from 'vite';
 import { defineConfig } from 'vitest/config';
 
 // Two builds of one source: the page (dist/web) and the command line with its worker (dist/node).
@@ -7,8 +8,17 @@ const isolation = {
   'Cross-Origin-Embedder-Policy': 'require-corp',
 };
 
+// CommonJS starts some 20 ms sooner than modules do; the nearest package.json says which of the two a file is.
+const nodeFilesAreCommonJs: Plugin = {
+  name: 'node-files-are-commonjs',
+  applyToEnvironment: ({ name }) => name === 'ssr',
+  generateBundle() {
+    this.emitFile({ type: 'asset', fileName: 'package.json', source: '{ "type": "commonjs" }\n' });
+  },
+};
+
 export default defineConfig({
-  plugins: [react()],
+  plugins: [react(), nodeFilesAreCommonJs],
   server: { headers: isolation, open: false, port: 5178 },
   preview: { headers: isolation, port: 5179 },
   worker: { format: 'es' },
@@ -31,7 +41,7 @@ export default defineConfig({
         rollupOptions: {
           input: { cli: 'src/cli/main.ts', nodeWorker: 'src/worker/nodeWorker.ts', bench: 'test/bench/main.ts' },
           external: [/^mujoco-js/],
-          output: { entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
+          output: { format: 'cjs', entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
         },
       },
     },

@@ -18,7 +18,9 @@ if (unknown.length > 0) {
   console.error(`no benchmark ${unknown.join(', ')}; there are ${Object.keys(BENCHES).join(', ')}`);
   process.exitCode = 3;
 } else {
-  for (const name of asked.length > 0 ? asked : Object.keys(BENCHES)) {
-    for await (const line of BENCHES[name]!()) console.log(line);
-  }
+  void printAll(asked.length > 0 ? asked : Object.keys(BENCHES));
+}
+
+async function printAll(names: readonly string[]): Promise<void> {
+  for (const name of names) for await (const line of BENCHES[name]!()) console.log(line);
 }

@@ -6,7 +6,7 @@
  * whole tree. The joint load is the opposite (outboard part ON the joint), about the joint origin, in the housing frame of the
  * arm file. Base frame and world frame are the same.
  */
-import loadEngine, { type MainModule } from 'mujoco-js';
+import type { MainModule } from 'mujoco-js';
 import type { Arm, LoadCase } from '../../src/arm/arm.ts';
 import { armModel } from './armModel.ts';
 
@@ -35,7 +35,7 @@ let models = 0;
 
 /** Loads the engine (once) and builds `arm` under `load`, by default its first case. */
 export async function outsideArm(arm: Arm, load: LoadCase = arm.cases[0]!): Promise<OutsideArm> {
-  engine ??= loadEngine();
+  engine ??= import('mujoco-js').then(({ default: loadEngine }) => loadEngine());
   const mj = await engine;
   const files = mj.FS as unknown as { writeFile(path: string, text: string): void; unlink(path: string): void };
   const path = `/arm${models++}.xml`;
