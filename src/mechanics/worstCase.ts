@@ -1,7 +1,7 @@
 /**
  * The certified worst of many checks in one load case, whatever the load. Weights: spheres to any gap. Forces at rest: first the sum of
  * separate bounds (`travelBounds.ts`, and `freeForceSearch.ts` where the force points anywhere), then branch and bound over boxes of angles. Motion:
- * the sum of separate bounds alone, so there a gap is left and said. Anytime: `step` does a slice of work, `rows` tells where things stand.
+ * the same with boxes of angles and speeds (`motionSearch.ts`); with many joints a gap is left, and said. Anytime: `step` does a slice of work, `rows` tells where things stand.
  */
 import { seededRandom } from '../math/random.ts';
 import { BranchBound } from './branchBound.ts';
@@ -13,6 +13,7 @@ import { type FreePart, freePart, worstAtPose } from './freeLoads.ts';
 import { GravityClimb } from './gravityClimb.ts';
 import { gravityLoad } from './gravityLoad.ts';
 import { type CheckState, GravitySearch, gapOf, isHomogeneous, ROUNDING, raiseByRounding } from './gravitySearch.ts';
+import { MotionSearch } from './motionSearch.ts';
 import { OutwardSets } from './outwardSets.ts';
 import { polish } from './polish.ts';
 import { sameCheck, sameJointLoad } from './sameLoad.ts';
@@ -32,10 +33,9 @@ export interface WorstRow {
 /** Time that one go at a check should take, ms, and the boxes of its first go: how many a box costs depends on the load. */
 const SLICE_MS = 40;
 const FIRST_BOXES = 16;
-/** Poses of a first look at a check, and climbs in a case with motion. */
+/** Poses of a first look at a check, and rounds of its first bound. */
 const FIRST_POSES = 12;
 const FIRST_ROUNDS = 2;
-const MOVING_CLIMBS = 4;
 
 /** Allowable values of checks, in the check's unit. */
 export type Limits = ReadonlyMap<CheckForm, number>;
@@ -44,7 +44,7 @@ export type Limits = ReadonlyMap<CheckForm, number>;
 interface Task {
   readonly state: CheckState;
   readonly spheres: FreeForceSearch | null;
-  branch: BranchBound | null;
+  branch: BranchBound | MotionSearch | null;
   /** Times it has been worked on. */
   goes: number;
   /** Boxes of the next go. */
@@ -179,19 +179,9 @@ export class WorstCase {
       this.begin(task, gap);
       return;
     }
-    // Boxes know nothing of speeds and accelerations: their bound would not be one.
-    if (this.load.speed !== null) {
-      this.climb(task);
-      task.spent = task.goes > MOVING_CLIMBS;
-      return;
-    }
     if (!task.branch || gap < task.spentAt) {
       task.spentAt = gap;
-      task.branch = new BranchBound(this.chain, this.load, state.check, {
-        gap,
-        seeds: this.seeds(state),
-        inboard: (joint, inLink) => this.directions(joint, inLink),
-      });
+      task.branch = this.branchFor(state, gap);
       state.ceiling = Math.max(state.ceiling, task.branch.ceiling);
       this.take(task);
       if (gapOf(state) <= gap) return;
@@ -247,12 +237,12 @@ export class WorstCase {
     raiseByRounding(state);
   }
 
-  /** Climbs from the best pose met; the first time from there, later from others. */
-  private climb({ state, goes }: Task): void {
-    const random = seededRandom(1000 * goes + state.check.joint);
-    const start =
-      goes === 2 ? state.pose : Float64Array.from(this.chain.from, (low, i) => random.between(low, this.chain.to[i]!));
-    this.offer(state, polish(this.chain, this.load, state.check, start).pose);
+  private branchFor(state: CheckState, gap: number): BranchBound | MotionSearch {
+    const { chain, load } = this;
+    const seeds = this.seeds(state);
+    if (load.speed !== null) return new MotionSearch(chain, load, state.check, { gap, seeds });
+    const inboard = (joint: number, inLink: boolean) => this.directions(joint, inLink);
+    return new BranchBound(chain, load, state.check, { gap, seeds, inboard });
   }
 
   private take(task: Task): void {
