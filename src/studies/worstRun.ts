@@ -19,6 +19,7 @@ import {
   worstChecks,
   worstResult,
 } from './worstArm.ts';
+import { type EarlierWorst, keptRows } from './worstKept.ts';
 
 /** Plain data. */
 export interface WorstShared {
@@ -29,16 +30,15 @@ export interface WorstShared {
   readonly end: number;
 }
 
-/** A case (`joint` null), or the checks of one joint of it (chain index) where those share no work with the others. */
-export interface WorstInput extends Part {
+/** A case, or one joint of it where joints share no work: the checks of `joints` (chain indices). */
+export interface WorstInput {
+  readonly caseIndex: number;
+  readonly joints: readonly number[];
   /** Time it may take, ms. */
   readonly budget: number;
 }
 
-interface Part {
-  readonly caseIndex: number;
-  readonly joint: number | null;
-}
+type Part = Pick<WorstInput, 'caseIndex' | 'joints'>;
 
 /** Every check that the certified worst covers: loads of joints and bearings, and the demands on capacity that are convex. */
 export function armChecks(arm: Arm, chain: Chain): readonly CheckForm[] {
@@ -59,8 +59,8 @@ export const worstJob: JobKind<WorstShared, WorstInput, CaseWorst> = {
     const capacity = capacityChecks(arm, chain);
     const checks = worstChecks(arm, chain, capacityForms(capacity));
     const limits = armLimits(capacity);
-    return ({ caseIndex, joint, budget }) => {
-      const own = joint === null ? checks : checks.filter((check) => check.joint === joint);
+    return ({ caseIndex, joints, budget }) => {
+      const own = checks.filter((check) => joints.includes(check.joint));
       const search = new CaseSearch(arm, chain, caseIndex, own, gap, null, limits);
       const until = Math.min(end, Date.now() + budget);
       search.work(() => Date.now() > until);
@@ -79,6 +79,8 @@ export interface WorstRunOptions {
   readonly gap?: number;
   readonly seconds?: number;
   readonly signal?: AbortSignal;
+  /** Worst of an earlier layout: joints of which every check is as it was are not searched again. */
+  readonly earlier?: EarlierWorst | null;
   /** After each part: the best so far, and how much of the present pass is done (0 to 1). */
   readonly onBetter?: (best: WorstResult, part: number) => void;
 }
@@ -90,12 +92,12 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
   const end = begin + 1000 * (options.seconds ?? DEFAULT_SECONDS);
   const chain = flattenArm(arm);
   const checks = armChecks(arm, chain);
-  const best = new BestRows(chain, checks);
+  const best = new BestRows(chain, checks, options.earlier ?? null);
   const passes = [...PASSES.filter((pass) => pass.gap > 2 * gap), { gap, until: 1 }];
   let stopped = false;
   const result = () => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end);
   for (const pass of passes) {
-    const inputs = allParts(chain).filter((part) => !best.closed(part, gap));
+    const inputs = allParts(chain).flatMap((part) => best.openPart(part, gap));
     if (inputs.length === 0) break;
     const until = begin + pass.until * (end - begin);
     // What time is left is shared out evenly as parts are handed out.
@@ -119,10 +121,10 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
 /** Long parts first, so that workers end together: cases for branch and bound joint by joint, then the others whole. */
 function allParts(chain: Chain): readonly Part[] {
   const whole = chain.cases.flatMap((load, caseIndex) =>
-    gravityLoad(chain, load) ? [{ caseIndex, joint: null }] : [],
+    gravityLoad(chain, load) ? [{ caseIndex, joints: chain.names.map((_, joint) => joint) }] : [],
   );
   const single = chain.cases.flatMap((load, caseIndex) =>
-    gravityLoad(chain, load) ? [] : chain.names.map((_, joint) => ({ caseIndex, joint })),
+    gravityLoad(chain, load) ? [] : chain.names.map((_, joint) => ({ caseIndex, joints: [joint] })),
   );
   return [...single, ...whole];
 }
@@ -132,9 +134,11 @@ class BestRows {
   private readonly checks: readonly CheckForm[];
   private readonly rows: (CheckRow | null)[][];
 
-  constructor(chain: Chain, checks: readonly CheckForm[]) {
+  constructor(chain: Chain, checks: readonly CheckForm[], earlier: EarlierWorst | null) {
     this.checks = checks;
-    this.rows = chain.cases.map(() => checks.map(() => null));
+    this.rows = earlier
+      ? keptRows(earlier, chain, checks, armChecks).map((rows) => [...rows])
+      : chain.cases.map(() => checks.map(() => null));
   }
 
   take(input: Part, output: CaseWorst): void {
@@ -145,11 +149,14 @@ class BestRows {
     });
   }
 
-  closed(input: Part, gap: number): boolean {
-    return this.places(input).every((place) => {
-      const row = this.rows[input.caseIndex]![place];
-      return row?.gap != null && row.gap <= gap;
-    });
+  /** The part without the joints whose gaps are all closed; nothing where none is left. */
+  openPart(part: Part, gap: number): Part[] {
+    const open = new Set<number>();
+    for (const place of this.places(part)) {
+      const row = this.rows[part.caseIndex]![place];
+      if (row?.gap == null || row.gap > gap) open.add(this.checks[place]!.joint);
+    }
+    return open.size === 0 ? [] : [{ ...part, joints: part.joints.filter((joint) => open.has(joint)) }];
   }
 
   /** Rows so far; empty while some part was never reached. */
@@ -170,7 +177,7 @@ class BestRows {
   }
 
   private places(input: Part): readonly number[] {
-    return this.checks.flatMap((check, place) => (input.joint === null || check.joint === input.joint ? [place] : []));
+    return this.checks.flatMap((check, place) => (input.joints.includes(check.joint) ? [place] : []));
   }
 }
 
