@@ -2,6 +2,7 @@
 import { create } from 'zustand';
 import type { ArmFile } from '../../arm/armFile.ts';
 import type { WorstResult } from '../../studies/worstArm.ts';
+import type { EarlierWorst } from '../../studies/worstKept.ts';
 import { armOf, useDocument } from './documentStore.ts';
 import { type ProofRun, startProof } from './runs.ts';
 
@@ -28,6 +29,8 @@ export const useProof = create<ProofState>(() => ({ gap: GAP, status: 'idle', be
 
 let run: ProofRun | null = null;
 let turn = 0;
+/** The last answer with all its rows, of whatever arm: a later layout takes over what it leaves as it was. */
+let last: EarlierWorst | null = null;
 
 function drop(): void {
   turn++;
@@ -46,14 +49,19 @@ function prove(file: ArmFile, seconds: number): void {
   const mine = turn;
   const { gap, of } = useProof.getState();
   useProof.setState({ status: 'running', of: file, trouble: null, ...(of === file ? {} : { best: null }) });
-  run = startProof(armOf(file).arm, { gap, seconds }, (best) => {
-    if (turn === mine && best.rows.length > 0) useProof.setState({ best });
-  });
+  const { arm } = armOf(file);
+  const keep = (best: WorstResult) => {
+    if (turn !== mine || best.rows.length === 0) return;
+    last = { arm, worst: best };
+    useProof.setState({ best });
+  };
+  run = startProof(arm, { gap, seconds, earlier: last }, keep);
   run.result.then(
     (best) => {
       if (turn !== mine) return;
       run = null;
-      useProof.setState({ status: 'ended', ...(best.rows.length > 0 ? { best } : {}) });
+      keep(best);
+      useProof.setState({ status: 'ended' });
     },
     (error: unknown) => {
       if (turn !== mine) return;

@@ -11,6 +11,7 @@ import type { CheckRow, SweepResult } from '../../studies/results.ts';
 import { sweepArm } from '../../studies/sweepArm.ts';
 import { sweepChecks } from '../../studies/sweepChecks.ts';
 import type { WorstResult } from '../../studies/worstArm.ts';
+import type { EarlierWorst } from '../../studies/worstKept.ts';
 import { runWorst } from '../../studies/worstRun.ts';
 import { browserPool } from '../../worker/browserPool.ts';
 
@@ -97,12 +98,12 @@ export function startCompare(arm: Arm, joint: string, options: CompareOptions, o
 }
 
 /**
- * The certified worst; `onBetter` gives each better answer as it comes. Its workers are its own, so that a stop can end them in the
- * middle of a long part.
+ * The certified worst; `onBetter` gives each better answer as it comes. What an `earlier` layout proved and the change leaves as it was is
+ * not searched again. Its workers are its own, so that a stop can end them in the middle of a long part.
  */
 export function startProof(
   arm: Arm,
-  order: { readonly gap: number; readonly seconds: number },
+  order: { readonly gap: number; readonly seconds: number; readonly earlier: EarlierWorst | null },
   onBetter: (best: WorstResult) => void,
 ): Run<WorstResult> {
   const pool = browserPool();
