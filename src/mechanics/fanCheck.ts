@@ -52,10 +52,12 @@ export class FanCheck implements SphereCheck {
       const s = Math.sin(angle);
       const scaled = [rows[0]!, rows[1]!].map((row) => Array.from(row, (v) => c * v));
       const l = Array.from(f.l, (v, k) => v + s * rows[2]![k]!);
-      return { angle, check: search(form({ P: scaled, l })), bound: Number.POSITIVE_INFINITY, level: -1 };
+      const [a, b, third] = [f.c[0]!, f.c[1]!, f.c[2]!];
+      const part = form({ P: scaled, l, c: [c * a, c * b], o: f.o + s * third });
+      return { angle, check: search(part), bound: Number.POSITIVE_INFINITY, level: -1 };
     };
     this.ribs = [-2, -1, 0, 1, 2].map((k) => this.make(k * WIDEST));
-    this.kappa = search(form({ P: [[0, 0, 0, 0, 0, 0]], l: Array.from(f.l) })).ceiling;
+    this.kappa = search(form({ P: [[0, 0, 0, 0, 0, 0]], l: Array.from(f.l), o: f.o })).ceiling;
     this.ceiling = Math.SQRT2 * this.ribs.reduce((most, rib) => Math.max(most, rib.check.ceiling), 0);
     this.stepCount = this.ribs[0]!.check.stepCount;
   }

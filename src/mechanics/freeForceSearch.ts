@@ -27,22 +27,28 @@ const WORTH = 2e-4;
 export class FreeForceSearch {
   private readonly parts: readonly { readonly search: SphereCheck; bound: number }[];
   private readonly last: number;
+  /** What the forms were raised by, so that none of their constants is negative along any e. */
+  private readonly raised: number;
   private readonly state: CheckState;
   private level = -1;
   private stalled = false;
 
-  /** `state` of a homogeneous check: its bound is lowered here. `weights`, `tip`: outward sets of the links and of the tip alone. */
+  /** `state` of a check: its bound is lowered here. Torque ranges of its forms are left out. `weights`, `tip`: outward sets of the links and of the tip alone. */
   constructor(chain: Chain, state: CheckState, weights: OutwardSets, tip: OutwardSets) {
     const { forms, joint } = state.check;
     const g = Math.hypot(...chain.gravity);
     const down = g > 0 ? chain.gravity.map((v) => v / g) : [0, 0, -1];
     this.state = state;
     const inLink = forms.every(sameAllRound);
+    this.raised = Math.max(0, ...forms.map((f) => Math.hypot(...f.c) - f.o));
     const search = (f: Form): SphereCheck =>
       f.rows === 3
         ? new FanCheck(weights, joint, f, g, down, inLink, tip)
         : new GravityCheck(weights, joint, f, g, down, inLink, new TipPush(tip, joint, f, inLink));
-    this.parts = forms.map((f) => ({ search: search(f), bound: Number.POSITIVE_INFINITY }));
+    this.parts = forms.map((f) => ({
+      search: search({ ...f, o: f.o + this.raised }),
+      bound: Number.POSITIVE_INFINITY,
+    }));
     this.last = forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;
     state.ceiling = Math.max(0, ...this.parts.map(({ search }) => search.ceiling));
     this.stalled = !Number.isFinite(state.ceiling);
@@ -56,19 +62,19 @@ export class FreeForceSearch {
   round(gap: number): void {
     this.level++;
     const { state, level } = this;
-    const wanted = state.found > 0 ? state.found / (1 - 0.95 * gap) : 0;
+    const wanted = this.raised + (state.found > 0 ? state.found / (1 - 0.95 * gap) : 0);
     let most = Number.NEGATIVE_INFINITY;
     for (const part of this.parts) {
       // A form that stays below what is attained, or allowed by the gap, needs no finer look.
       if (part.bound > wanted) {
         const { search } = part;
-        const enough = Math.max(state.found, wanted * (1 - overshoot(level, search.stepCount)));
+        const enough = Math.max(this.raised + state.found, wanted * (1 - overshoot(level, search.stepCount)));
         const bound = search.best(level, wanted, enough);
         if (!(bound >= part.bound)) part.bound = bound;
       }
       if (!(part.bound <= most)) most = part.bound;
     }
-    const bound = most + ROUNDING * state.ceiling;
+    const bound = most - this.raised + ROUNDING * state.ceiling;
     // Level 1 is where the tables begin to speak; a bound that stands still from there on is the pose's fault.
     this.stalled = level > 1 && !(bound < state.bound * (1 - WORTH));
     state.bound = Math.min(state.bound, bound);

@@ -95,7 +95,7 @@ export class WorstCase {
       const state = entries.get(check) ?? blank(chain, check);
       return {
         state,
-        spheres: sets && isHomogeneous(check) ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
+        spheres: sets ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
         branch: null,
         goes: 0,
         boxes: FIRST_BOXES,
