@@ -224,6 +224,11 @@ export interface PlainBushing {
   readonly pressureLimit: number | null;
   readonly speedLimit: number | null;
   readonly pvLimit: number | null;
+  /** Outside diameter of the flange, m; null: none, so no thrust. */
+  readonly flangeOuter: number | null;
+  /** Volume worn per load and way, m³/(N·m), that is 1/Pa; and the depth that wears it out, m. */
+  readonly wearFactor: number | null;
+  readonly wearDepth: number | null;
   /** Diametral running clearance, m. */
   readonly clearance: number | null;
   readonly stiffness: number | null;

@@ -320,6 +320,15 @@ const bushingSchema = z.strictObject({
   pressure_limit_MPa: may(aboveZero(), 'Largest projected pressure'),
   speed_limit_m_s: may(aboveZero(), 'Largest sliding speed'),
   pv_limit_MPa_m_s: may(aboveZero(), 'Largest product of projected pressure and sliding speed'),
+  flange_outer_mm: may(
+    aboveZero(),
+    'Outside diameter of the flange, or of a thrust washer, at every end that thrust presses on; without it the bushing takes no thrust',
+  ),
+  wear_factor_mm3_N_m: may(
+    aboveZero(),
+    'Wear factor: volume worn per newton and metre slid, with the shaft it runs on',
+  ),
+  wear_depth_mm: may(aboveZero(), 'Depth of wear at which the bushing is worn out'),
   clearance_um: may(notNegative(), 'Diametral running clearance'),
   stiffness_N_um: may(aboveZero(), 'Radial stiffness'),
   source: may(text(), 'Where the numbers come from'),
@@ -355,7 +364,7 @@ const segmentSchema = z.strictObject({
 
 const targetsSchema = z.strictObject({
   static_safety: may(aboveZero(), 'Least static safety of every bearing'),
-  life_h: may(aboveZero(), 'Least rating life of every bearing'),
+  life_h: may(aboveZero(), 'Least rating life of every rolling bearing, and least wear life of every bushing'),
   reliability: may(between(0.9, 0.9995), 'Reliability of the rating life, 0.9 to 0.9995 (ISO 281)'),
   shaft_yield_safety: may(aboveZero(), 'Least safety of every shaft against yield'),
   shaft_fatigue_safety: may(aboveZero(), 'Least safety of every shaft against fatigue'),
@@ -403,5 +412,6 @@ export type DriveFile = z.infer<typeof driveSchema>;
 export type CaseFile = z.infer<typeof caseSchema>;
 export type BearingFile = z.infer<typeof bearingSchema>;
 export type RollingFile = z.infer<typeof rollingSchema>;
+export type BushingFile = z.infer<typeof bushingSchema>;
 export type SegmentFile = z.infer<typeof segmentSchema>;
 export type InertiaFile = z.infer<ReturnType<typeof inertia>>;

@@ -210,6 +210,9 @@ function bearing(file: BearingFile): Bearing {
       pressureLimit: orNull(file.pressure_limit_MPa, 'MPa'),
       speedLimit: file.speed_limit_m_s ?? null,
       pvLimit: orNull(file.pv_limit_MPa_m_s, 'MPa·m/s'),
+      flangeOuter: orNull(file.flange_outer_mm, 'mm'),
+      wearFactor: orNull(file.wear_factor_mm3_N_m, 'mm³/N/m'),
+      wearDepth: orNull(file.wear_depth_mm, 'mm'),
       clearance: orNull(file.clearance_um, 'µm'),
     };
   }

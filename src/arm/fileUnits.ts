@@ -1,5 +1,6 @@
 /** The unit a key of the arm file carries at its end. Longer endings come first: `C0_N` is newtons, `stiffness_N_um` is not micrometres. */
 const ENDINGS: readonly (readonly [string, string])[] = [
+  ['_mm3_N_m', 'mm³/N/m'],
   ['_MPa_m_s', 'MPa·m/s'],
   ['_kg_m2', 'kg·m²'],
   ['_deg_s2', '°/s²'],

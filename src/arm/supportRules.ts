@@ -1,4 +1,4 @@
-import type { ArmFile, BearingFile, PairFile, RollingFile, ShaftFile, SupportFile } from './armFile.ts';
+import type { ArmFile, BearingFile, BushingFile, PairFile, RollingFile, ShaftFile, SupportFile } from './armFile.ts';
 import type { IssuePath } from './issue.ts';
 import type { Findings, Known } from './known.ts';
 
@@ -163,6 +163,7 @@ function checkSupport(
 function checkBearing(bearing: Known<BearingFile>, path: IssuePath, findings: Findings): void {
   const { bore_mm: bore, outer_mm: outer } = bearing;
   inside(bore, outer, [...path, 'bore_mm'], findings);
+  if (bearing.kind === 'plain-bushing') checkBushing(bearing as Known<BushingFile>, path, findings);
   if (bearing.kind === 'plain-bushing' || bearing.kind === undefined) return;
   const rolling = bearing as Known<RollingFile>;
   if (rolling.clearance !== undefined && rolling.clearance_um !== undefined) {
@@ -202,6 +203,27 @@ function checkBearing(bearing: Known<BearingFile>, path: IssuePath, findings: Fi
   if (rolling.balls !== undefined && rolling.balls * ball > circle) {
     const expected = `at most ${Math.floor(circle / ball)}, which fill the pitch circle`;
     findings.problem('geometry', [...path, 'balls'], String(rolling.balls), expected);
+  }
+}
+
+function checkBushing(bushing: Known<BushingFile>, path: IssuePath, findings: Findings): void {
+  const { bore_mm: bore, outer_mm: outer, flange_outer_mm: flange, wear_depth_mm: wear } = bushing;
+  if (flange !== undefined && outer !== undefined && flange <= outer) {
+    findings.problem(
+      'geometry',
+      [...path, 'flange_outer_mm'],
+      String(flange),
+      `more than the outside diameter, ${outer}`,
+    );
+  }
+  if (wear === undefined || bore === undefined || outer === undefined || bore >= outer) return;
+  if (wear >= (outer - bore) / 2) {
+    findings.problem(
+      'geometry',
+      [...path, 'wear_depth_mm'],
+      String(wear),
+      `less than the wall of the bushing, ${(outer - bore) / 2}`,
+    );
   }
 }
 

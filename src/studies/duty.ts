@@ -4,7 +4,7 @@
  * open path needs to come back to its start is not in it and not counted.
  */
 import type { Arm, DutySegment } from '../arm/arm.ts';
-import { type DutyPart, dutyPart, type PathMotion, pathMotion, pathSwings } from '../capacity/duty/index.ts';
+import { type DutyPart, dutyFaces, dutyPart, type PathMotion, pathMotion, pathSwings } from '../capacity/duty/index.ts';
 import { isRingParts, jointParts } from '../capacity/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { type Chain, type ChainCase, flattenArm, WRENCH } from '../mechanics/chain.ts';
@@ -28,15 +28,17 @@ export function dutyStudy(arm: Arm, chain: Chain = flattenArm(arm), options: Dut
     const parts = jointParts(arm, chain, joint);
     if (!parts) return [];
     const names = isRingParts(parts) ? (['ring'] as const) : (['A', 'B'] as const);
-    return names.map((side) => ({ jointIndex, joint, side, part: dutyPart(parts, side) }));
+    return names.flatMap((side) =>
+      dutyFaces(parts, side).map((face) => ({ jointIndex, joint, side, face, part: dutyPart(parts, side, face) })),
+    );
   });
   const known = sides.flatMap(({ part }) => ('value' in part ? [part.value] : []));
   const bounds = options.bounds ?? sphereBounds;
   const runs = arm.duty.map((segment) => runSegment(arm, chain, segment, known, bounds));
   const reliability = targetsOf(arm).reliability.value ?? 0.9;
   let index = 0;
-  const bearings = sides.map(({ jointIndex, side, part }): DutyBearing => {
-    const head = { joint: arm.joints[jointIndex]!.name, jointIndex, side };
+  const bearings = sides.map(({ jointIndex, side, face, part }): DutyBearing => {
+    const head = { joint: arm.joints[jointIndex]!.name, jointIndex, side, face };
     if ('unassessed' in part) return { ...head, ...NOTHING, unassessed: part.unassessed };
     const b = index++;
     const mine = runs.map((run) => run.parts[b]!);

@@ -1,5 +1,11 @@
 /** From the segments of a duty to the life of each rolling bearing, the PV of each bushing, and the life of all bearings together. */
-import { bearingLife, type DutyPart, type PathSwings, smallSwingShare } from '../capacity/duty/index.ts';
+import {
+  bearingLife,
+  type DutyBushing,
+  type DutyPart,
+  type PathSwings,
+  smallSwingShare,
+} from '../capacity/duty/index.ts';
 import { criticalHalfSwing, internalGeometry, isUnassessed, sentence, systemLife } from '../capacity/rolling/index.ts';
 import type { DutyBearing, PartSegment, SegmentResult, SystemLife } from './dutyResult.ts';
 
@@ -22,7 +28,7 @@ export const NOTHING = {
   warnings: [],
 } as const;
 
-export type BearingBody = Omit<DutyBearing, 'joint' | 'jointIndex' | 'side'>;
+export type BearingBody = Omit<DutyBearing, 'joint' | 'jointIndex' | 'side' | 'face'>;
 
 export function bearingDuty(
   part: DutyPart,
@@ -72,24 +78,22 @@ function smallArcs(part: DutyPart, runs: readonly Run[]): readonly string[] {
 }
 
 function bushingDuty(
-  part: DutyPart,
+  part: DutyBushing,
   segments: readonly PartSegment[],
   runs: readonly Run[],
   shares: readonly number[],
 ): BearingBody {
-  const { bore, width } = part.bearing;
+  const { area, diameter } = part.slides;
   const common = { ...NOTHING, kind: 'bushing', segments, notes: part.notes } as const;
-  const area = bore * width;
-  if (!(area > 0)) return { ...common, unassessed: 'bore and length of the bushing must be positive numbers' };
   const each = segments.map((one, s) => {
     const joint = runs[s]!.segment.joints[part.joint]!;
-    const speed = (joint.swept * bore) / 2;
+    const speed = (joint.swept * diameter) / 2;
     const pv = (load: number) => (speed === 0 ? 0 : (load / area) * speed);
     return {
       pv: pv(one.load),
       attained: pv(one.attained),
       speed,
-      peakSpeed: (joint.peakSpeed * bore) / 2,
+      peakSpeed: (joint.peakSpeed * diameter) / 2,
     };
   });
   if (each.some(({ pv }) => Number.isNaN(pv))) {
@@ -109,6 +113,7 @@ function bushingDuty(
       peakSpeed: Math.max(...each.map((one) => one.peakSpeed)),
       slid: sum((s) => each[s]!.speed),
       wearRate: sum((s) => each[s]!.pv),
+      attainedWearRate: sum((s) => each[s]!.attained),
     },
   };
 }

@@ -1,5 +1,5 @@
 /** What the duty study hands on: plain data, SI and radians. */
-import type { BearingLife } from '../capacity/duty/index.ts';
+import type { BearingLife, BushingFace } from '../capacity/duty/index.ts';
 
 /** One bearing in one segment. */
 export interface PartSegment {
@@ -41,6 +41,8 @@ export interface DutyBearing {
   readonly joint: string;
   readonly jointIndex: number;
   readonly side: 'A' | 'B' | 'ring';
+  /** Of a bushing: where it slides; `bore` for all else. */
+  readonly face: BushingFace;
   readonly kind: 'rolling' | 'bushing' | null;
   /** In the order of the duty; empty where the bearing is not known. */
   readonly segments: readonly PartSegment[];
@@ -65,9 +67,10 @@ export interface BushingDuty {
   readonly segment: number;
   /** m/s. */
   readonly peakSpeed: number;
-  /** Over the whole duty: m slid a second, and Pa·m/s, for a wear depth of wear factor times pressure times distance. */
+  /** Over the whole duty: m slid a second, and the mean of pressure times speed, Pa·m/s, that wears it: safe, and attained. */
   readonly slid: number;
   readonly wearRate: number;
+  readonly attainedWearRate: number;
 }
 
 export interface DutyResult {

@@ -7,7 +7,8 @@ import { isRingParts, jointParts } from '../capacity/index.ts';
 import type { Chain } from '../mechanics/chain.ts';
 import { fatigueRows } from './assessFatigue.ts';
 import { dutyStudy } from './duty.ts';
-import { dutyRows, missingRow, WHOLE_ARM } from './dutyRows.ts';
+import { missingRow, WHOLE_ARM } from './dutyRowParts.ts';
+import { dutyRows } from './dutyRows.ts';
 import { playStudy } from './play.ts';
 import { playRows } from './playRows.ts';
 import type { CheckRow } from './results.ts';
@@ -48,7 +49,7 @@ const CHECKS: ReadonlySet<string> = new Set([
 
 /** Whether a row is one of these and not of a search over poses. */
 export function isLasting(row: Pick<CheckRow, 'check'>): boolean {
-  return CHECKS.has(row.check);
+  return CHECKS.has(row.check.replace(/^flange /, ''));
 }
 
 /**

@@ -7,7 +7,7 @@
 import type { Arm } from '../arm/arm.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { judge, REASONS } from './assessVerdict.ts';
-import { WHOLE_ARM } from './dutyRows.ts';
+import { WHOLE_ARM } from './dutyRowParts.ts';
 import type { JointPlayResult, PlayResult } from './play.ts';
 import type { CheckRow, Wrench } from './results.ts';
 

@@ -223,6 +223,9 @@ const ROWS: readonly Row[] = [
   ['clearances the wrong way round', one(['bearings', 'angular', 'clearance_um'], [8, 2]), 'wrong-order'],
   ['a shaft fit in capitals', one(['bearings', 'groove', 'shaft_fit'], 'K5'), 'bad-text'],
   ['a housing fit in small letters', one(['bearings', 'groove', 'housing_fit'], 'h7'), 'bad-text'],
+  ['a flange no larger than its bushing', one(['bearings', 'bush', 'flange_outer_mm'], 21), 'geometry'],
+  ['wear through the wall', one(['bearings', 'bush', 'wear_depth_mm'], 3), 'geometry'],
+  ['a wear factor of 0', one(['bearings', 'bush', 'wear_factor_mm3_N_m'], 0), 'out-of-range'],
   ['a rating of a bushing', one(['bearings', 'bush', 'C_N'], 1000), 'unknown-key'],
   [
     'a bearing without a name',

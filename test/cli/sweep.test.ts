@@ -131,13 +131,8 @@ describe('armload sweep', () => {
     const names = new Set(swept.rows.map((row) => row.check));
     expect([...names].sort()).toEqual([
       'fatigue',
-      'life',
-      'lost motion',
-      'play tilt',
-      'pv',
-      'speed',
-      'system life',
-      'tip error',
+      ...['flange pv', 'flange speed', 'flange wear life'],
+      ...['life', 'lost motion', 'play tilt', 'pv', 'speed', 'system life', 'tip error', 'wear life'],
     ]);
     expect((await at('worst', '--seconds', '2', '--gap', '0.5')).rows).toEqual(swept.rows);
     const one = await at('sweep', '--samples', '2', '--case', 'full crate');

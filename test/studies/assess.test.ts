@@ -142,6 +142,7 @@ describe('thrust on a bearing that takes none', () => {
     expect(verdicts([0, 0, 1], bush)).toMatchObject({ verdict: 'unassessed', value: 100 });
     expect(verdicts([0, 0, 1], bush)!.reason).toContain('flange');
     expect(verdicts([0, 1, 0], bush)).toMatchObject({ verdict: 'pass' });
+    expect(verdicts([0, 0, 1], { ...bush, flange_outer_mm: 32 })).toBeUndefined();
   });
 });
 

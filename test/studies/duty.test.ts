@@ -421,4 +421,54 @@ describe('plain bushings', () => {
       reason: 'fill in `pv_limit_MPa_m_s` of the bushing',
     });
   });
+
+  it('wears by hand: 1 mm³/(N·km) under 2 MPa at 0.02094 m/s, 0.1 mm deep after 663 h', () => {
+    const worn: BearingFile = { ...bushing, wear_factor_mm3_N_m: 1e-6, wear_depth_mm: 0.1 };
+    const life = (bearing: BearingFile, file: Partial<ArmFile> = {}) =>
+      rows({ ...swinging(bearing), ...file }).find((row) => row.check === 'wear life' && row.bearing === 'A')!;
+    // K p v = 1e-15 /Pa · 2e6 Pa · 0.0209440 m/s = 4.1888e-11 m/s; 1e-4 m / that = 2.38732e6 s = 663.1 h.
+    const row = life(worn, { targets: { life_h: 500 } });
+    expect(row.value / 2.38732e6).toBeCloseTo(1, 4);
+    expect(row).toMatchObject({ unit: 's', allowable: 500 * 3600, verdict: 'pass' });
+    expect(row.utilisation).toBeCloseTo((500 * 3600) / row.value, 12);
+    expect(life(worn, { targets: { life_h: 700 } }).verdict).toBe('over');
+    // Twice the factor, half the depth or twice the load halve it.
+    expect(life({ ...worn, wear_factor_mm3_N_m: 2e-6 }).value / row.value).toBeCloseTo(0.5, 12);
+    expect(life({ ...worn, wear_depth_mm: 0.05 }).value / row.value).toBeCloseTo(0.5, 12);
+    expect(life(worn, { cases: [{ name: 'own weight', factor: 2 }] }).value / row.value).toBeCloseTo(0.5, 9);
+  });
+
+  it('without a wear factor or depth its wear is unassessed and says what to fill in', () => {
+    const reasonOf = (bearing: BearingFile) => rows(swinging(bearing)).find((row) => row.check === 'wear life')!;
+    expect(reasonOf(bushing)).toMatchObject({ verdict: 'unassessed' });
+    expect(reasonOf(bushing).reason).toContain('wear_factor_mm3_N_m');
+    expect(reasonOf({ ...bushing, wear_factor_mm3_N_m: 1e-6 }).reason).toContain('wear_depth_mm');
+  });
+
+  it('slides on its flange too, where it has one and locates: 500 N on 20 to 32 mm at 26 mm mean diameter', () => {
+    const flanged: BearingFile = { ...bushing, flange_outer_mm: 32, wear_factor_mm3_N_m: 1e-6, wear_depth_mm: 0.1 };
+    const file = swinging(flanged);
+    const pushed = {
+      ...file,
+      cases: [
+        { name: 'own weight', tip_force: { force_N: 500, direction: { base: [1, 0, 0] as [number, number, number] } } },
+      ],
+    };
+    const all = rows(pushed);
+    const of = (check: string) => all.filter((row) => row.check === check).map((row) => row.bearing);
+    // A locates; B floats and its flange touches nothing.
+    expect(of('flange pv')).toEqual(['A']);
+    expect(of('flange wear life')).toEqual(['A']);
+    const pv = all.find((row) => row.check === 'flange pv')!;
+    const area = (Math.PI / 4) * (0.032 ** 2 - 0.02 ** 2);
+    expect(pv.value / ((500 / area) * 2 * (Math.PI / 6) * 0.026)).toBeCloseTo(1, 5);
+    const wear = all.find((row) => row.check === 'flange wear life')!;
+    expect(wear.value / (1e-4 / (1e-15 * pv.value))).toBeCloseTo(1, 9);
+    // Without thrust it does not wear at all.
+    expect(rows(file).find((row) => row.check === 'flange wear life')).toMatchObject({
+      value: Number.POSITIVE_INFINITY,
+      utilisation: 0,
+      verdict: 'pass',
+    });
+  });
 });

@@ -1,6 +1,6 @@
 /** Every check of the selected joint: demand, allowable, where it governs, and the source of the rule; open ones say what to fill in. */
 import { poseText } from '../../report/shown.ts';
-import { WHOLE_ARM } from '../../studies/dutyRows.ts';
+import { WHOLE_ARM } from '../../studies/dutyRowParts.ts';
 import { isLasting } from '../../studies/lastingRows.ts';
 import { type CheckRow, isMissing, moreIsBetter } from '../../studies/results.ts';
 import { SHOWN_UNITS } from '../../units/format.ts';

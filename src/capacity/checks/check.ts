@@ -16,7 +16,7 @@ import { fewerForms } from './fewerForms.ts';
 export type DemandAt = (w: Numbers, at: number) => number;
 
 export interface CapacityCheck {
-  /** Unique together with joint and bearing: `static`, `thrust`, `pressure`, `stress`, `slope`, `deflection`, `equivalent`, `support`. */
+  /** Unique together with joint and bearing: `static`, `thrust`, `pressure`, `flange pressure`, `stress`, `slope`, `deflection`, `equivalent`, `support`. */
   readonly check: string;
   /** In words. */
   readonly label: string;

@@ -7,7 +7,7 @@ import { isRingParts, named, type PairParts, type RingParts } from './jointParts
 
 export const THRUST_RULE: Rule = {
   name: 'thrust on a radial bearing',
-  formula: '|Fa| = 0 on cylindrical and needle rollers and on plain bushings',
+  formula: '|Fa| = 0 on cylindrical and needle rollers and on plain bushings without a flange',
   source: 'ISO 76:2006 and ISO 281:2007 give these kinds no axial load; common practice',
   trust: 'common practice',
   units: 'N',
@@ -25,6 +25,8 @@ export function thrustChecks(parts: PairParts | RingParts): readonly CapacityChe
     const bearing = parts.bearings[side];
     if ('unassessed' in bearing || (thrust !== 'both' && thrust !== side)) return [];
     const { kind } = bearing.value;
+    // A flange takes it: the check of its pressure.
+    if (bearing.value.kind === 'plain-bushing' && bearing.value.flangeOuter !== null) return [];
     if (kind !== 'plain-bushing' && carriesThrust(kind)) return [];
     const name = named(parts, side, {
       check: 'thrust',
@@ -38,7 +40,7 @@ export function thrustChecks(parts: PairParts | RingParts): readonly CapacityChe
         floor: ROUNDING + ROUNDING_SHARE * parts.forceScale,
         beyond:
           kind === 'plain-bushing'
-            ? 'the file says of no flange or washer that could take the thrust of a plain bushing: let the other bearing locate'
+            ? 'the file says of no flange or washer that could take the thrust of a plain bushing: fill in `flange_outer_mm`, or let the other bearing locate'
             : null,
         source:
           kind === 'plain-bushing'

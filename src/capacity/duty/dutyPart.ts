@@ -4,7 +4,8 @@
  *
  * Rolling bearing: the dynamic equivalent load P and the exponent p of its life. P never falls with a rising radial load, thrust or moment
  * (`../rolling/dynamicEquivalent.ts`), nor do the rows of an adjusted pair, so P of the largest of each is never below P of any of them
- * together. Plain bushing: the radial load and the exponent 1, for wear grows with pressure times the distance slid.
+ * together. Plain bushing: the radial load in its bore, and the thrust on its flange as a part of its own, with the exponent 1, for wear grows
+ * with pressure times the distance slid.
  */
 import type { Bearing, PlainBushing, RollingBearing } from '../../arm/arm.ts';
 import type { Numbers } from '../../math/vector.ts';
@@ -17,8 +18,10 @@ import {
   type PairParts,
   type RingParts,
   radialNorms,
+  thrustSigns,
   tiltingNorms,
 } from '../checks/jointParts.ts';
+import { type FlangeFace, flangeFace } from '../plain/index.ts';
 import { dynamicEquivalent, shareThrust } from '../rolling/index.ts';
 import type { Assessed } from '../rule.ts';
 
@@ -53,15 +56,33 @@ export interface DutyRolling extends Common {
   readonly bearing: RollingBearing;
 }
 
+/** Where a bushing slides: in its bore under the radial load, or on its flange under the thrust. */
+export type BushingFace = 'bore' | 'flange';
+
 export interface DutyBushing extends Common {
   readonly kind: 'bushing';
   readonly bearing: PlainBushing;
+  readonly face: BushingFace;
+  /** Pressed area, m², and the diameter at which it slides, m. */
+  readonly slides: FlangeFace;
 }
 
 export type DutyPart = DutyRolling | DutyBushing;
 
-/** A side of a joint, ready for any number of loads; or why it cannot be. */
-export function dutyPart(parts: PairParts | RingParts, side: BearingSide): Assessed<DutyPart> {
+/** The faces of a side that the duty looks at: the flange of a bushing too, where thrust can reach it. */
+export function dutyFaces(parts: PairParts | RingParts, side: BearingSide): readonly BushingFace[] {
+  if (isRingParts(parts) || side === 'ring') return ['bore'];
+  const outcome = parts.bearings[side];
+  const flanged = 'value' in outcome && outcome.value.kind === 'plain-bushing' && outcome.value.flangeOuter !== null;
+  return flanged && thrustSigns(parts.support, side).length > 0 ? ['bore', 'flange'] : ['bore'];
+}
+
+/** A side of a joint (of a bushing one face), ready for any number of loads; or why it cannot be. */
+export function dutyPart(
+  parts: PairParts | RingParts,
+  side: BearingSide,
+  face: BushingFace = 'bore',
+): Assessed<DutyPart> {
   const outcome: Assessed<Bearing> = isRingParts(parts) ? parts.bearing : parts.bearings[side === 'B' ? 'B' : 'A'];
   if ('unassessed' in outcome) return outcome;
   const { joint, jointIndex } = parts;
@@ -71,6 +92,10 @@ export function dutyPart(parts: PairParts | RingParts, side: BearingSide): Asses
   const radial = size('radial', 'N', radialNorms(parts, side));
   if (outcome.value.kind === 'plain-bushing') {
     if (isRingParts(parts)) return { unassessed: 'a plain bushing is no ring that carries moment' };
+    const slides = bushingFace(outcome.value, face);
+    if ('unassessed' in slides) return slides;
+    const axial = () => size('axial', 'N', axialForms(parts.support.thrust, side === 'B' ? 'B' : 'A'));
+    const pressed = face === 'bore' ? radial : axial();
     return {
       value: {
         kind: 'bushing',
@@ -78,8 +103,10 @@ export function dutyPart(parts: PairParts | RingParts, side: BearingSide): Asses
         jointIndex,
         side,
         bearing: outcome.value,
-        at: (w, at) => checkValue(radial, w, at),
-        sizes: [radial],
+        face,
+        slides: slides.value,
+        at: (w, at) => checkValue(pressed, w, at),
+        sizes: [pressed],
         fromSizes: (largest, at) => largest[at]!,
         exponent: 1,
         notes: [],
@@ -114,6 +141,12 @@ export function dutyPart(parts: PairParts | RingParts, side: BearingSide): Asses
   }
   const sizes = [radial, size('axial', 'N', axialForms(parts.support.thrust, side === 'B' ? 'B' : 'A'))];
   return { value: { ...common, sizes, fromSizes: (s, at) => dynamicEquivalent(value.form, s[at]!, s[at + 1]!) } };
+}
+
+function bushingFace({ bore, width, flangeOuter }: PlainBushing, face: BushingFace): Assessed<FlangeFace> {
+  if (face === 'flange') return flangeFace(bore, flangeOuter);
+  if (!(bore > 0 && width > 0)) return { unassessed: 'bore and length of the bushing must be positive numbers' };
+  return { value: { area: bore * width, diameter: bore } };
 }
 
 /** Both rows' radial loads and the thrust that loads this row: each raises its axial load (`shareThrust` is a maximum of rising parts). */

@@ -8,34 +8,34 @@ export const CLEARANCE_RULE: Rule = {
   source: 'ISO 5753-1, radial contact ball and cylindrical roller bearings, cylindrical bore',
   trust: 'from memory',
   units: 'm',
-  range: 'balls: bore 2.5 to 65 mm, C2 to C4; cylindrical and needle rollers: 10 to 65 mm, C2 to C3',
+  range: 'balls: bore 2.5 to 65 mm (C5: above 6); cylindrical and needle rollers: 10 to 65 mm; C2 to C5',
 };
 
-type Group = 'C2' | 'CN' | 'C3' | 'C4';
+type Group = 'C2' | 'CN' | 'C3' | 'C4' | 'C5';
 type Limits = readonly [least: number, most: number];
-/** Bore above, up to (mm); least and most clearance (µm) of C2, CN, C3, C4. */
-type Row = readonly [over: number, incl: number, C2: Limits, CN: Limits, C3: Limits, C4: Limits | null];
+/** Bore above, up to (mm); least and most clearance (µm) of C2, CN, C3, C4, C5. */
+type Row = readonly [over: number, incl: number, C2: Limits, CN: Limits, C3: Limits, C4: Limits, C5: Limits | null];
 
 const BALL: readonly Row[] = [
-  [2.5, 6, [0, 7], [2, 13], [8, 23], [14, 29]],
-  [6, 10, [0, 7], [2, 13], [8, 23], [14, 29]],
-  [10, 18, [0, 9], [3, 18], [11, 25], [18, 33]],
-  [18, 24, [0, 10], [5, 20], [13, 28], [20, 36]],
-  [24, 30, [1, 11], [5, 20], [13, 28], [23, 41]],
-  [30, 40, [1, 11], [6, 20], [15, 33], [28, 46]],
-  [40, 50, [1, 11], [6, 23], [18, 36], [30, 51]],
-  [50, 65, [1, 15], [8, 28], [23, 43], [38, 61]],
+  [2.5, 6, [0, 7], [2, 13], [8, 23], [14, 29], null],
+  [6, 10, [0, 7], [2, 13], [8, 23], [14, 29], [20, 37]],
+  [10, 18, [0, 9], [3, 18], [11, 25], [18, 33], [25, 45]],
+  [18, 24, [0, 10], [5, 20], [13, 28], [20, 36], [28, 48]],
+  [24, 30, [1, 11], [5, 20], [13, 28], [23, 41], [30, 53]],
+  [30, 40, [1, 11], [6, 20], [15, 33], [28, 46], [40, 64]],
+  [40, 50, [1, 11], [6, 23], [18, 36], [30, 51], [45, 73]],
+  [50, 65, [1, 15], [8, 28], [23, 43], [38, 61], [55, 90]],
 ];
 
 const ROLLER: readonly Row[] = [
-  [10, 24, [0, 25], [20, 45], [35, 60], null],
-  [24, 30, [0, 25], [20, 45], [35, 60], null],
-  [30, 40, [5, 30], [25, 50], [45, 70], null],
-  [40, 50, [5, 35], [30, 60], [50, 80], null],
-  [50, 65, [10, 40], [40, 70], [60, 90], null],
+  [10, 24, [0, 25], [20, 45], [35, 60], [50, 75], [65, 90]],
+  [24, 30, [0, 25], [20, 45], [35, 60], [50, 75], [70, 95]],
+  [30, 40, [5, 30], [25, 50], [45, 70], [60, 85], [80, 105]],
+  [40, 50, [5, 35], [30, 60], [50, 80], [70, 100], [95, 125]],
+  [50, 65, [10, 40], [40, 70], [60, 90], [80, 110], [110, 140]],
 ];
 
-const GROUP_AT = { C2: 2, CN: 3, C3: 4, C4: 5 } as const;
+const GROUP_AT = { C2: 2, CN: 3, C3: 4, C4: 5, C5: 6 } as const;
 
 const TABLE: Readonly<Partial<Record<RollingKind, readonly Row[]>>> = {
   'deep-groove': BALL,
@@ -49,12 +49,12 @@ const HAIR = 1e-6;
 
 function fromTable(kind: RollingKind, group: Group, bore: number): Assessed<Range> {
   const rows = TABLE[kind];
-  if (!rows) return { unassessed: 'no table of clearance groups covers this kind: fill in a measured `clearance`' };
+  if (!rows) return { unassessed: 'no table of clearance groups covers this kind: fill in a measured `clearance_um`' };
   const mm = bore * 1e3;
   const row = rows.find(([over, incl]) => mm > over + HAIR && mm <= incl + HAIR);
   const limits = row?.[GROUP_AT[group]];
   if (!limits)
-    return { unassessed: 'the table of clearance groups does not reach here: fill in a measured `clearance`' };
+    return { unassessed: 'the table of clearance groups does not reach here: fill in a measured `clearance_um`' };
   return { value: { from: limits[0] * MICRON, to: limits[1] * MICRON } };
 }
 
@@ -76,6 +76,5 @@ export function internalClearance(bearing: Bearing, adjusted: boolean): Assessed
     return { unassessed: 'the measured clearance is not a range of usable numbers' };
   }
   if (adjusted) return { value: { from: 0, to: 0 } };
-  if (clearance === 'C5') return { unassessed: 'group C5 is not in the table: fill in a measured `clearance`' };
   return fromTable(kind, clearance, bore);
 }

@@ -52,6 +52,9 @@ const FIELDS: Readonly<Record<BearingKey, 'number' | 'text' | 'clearance'>> = {
   pressure_limit_MPa: 'number',
   speed_limit_m_s: 'number',
   pv_limit_MPa_m_s: 'number',
+  flange_outer_mm: 'number',
+  wear_factor_mm3_N_m: 'number',
+  wear_depth_mm: 'number',
   source: 'text',
 };
 const NEEDED = ['name', 'kind', 'bore_mm', 'outer_mm', 'width_mm'] as const;

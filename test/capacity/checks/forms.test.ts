@@ -358,6 +358,41 @@ describe('pressure of a bushing', () => {
   });
 });
 
+describe('pressure on the flange of a bushing', () => {
+  const bush: BearingFile = {
+    kind: 'plain-bushing',
+    bore_mm: 20,
+    outer_mm: 26,
+    width_mm: 25,
+    flange_outer_mm: 32,
+    pressure_limit_MPa: 12,
+  };
+  const pair = (thrust: 'A' | 'B' | 'both', left: BearingFile = bush) =>
+    listed(
+      oneJoint({ support: { ...CLEVIS, thrust }, bearings: { left, right: GROOVE }, targets: { pressure_MPa: 9 } }),
+    );
+
+  it('is the thrust over the ring from bore to flange, whichever way it points, against the smaller of limit and target', () => {
+    const check = pair('A').of('flange pressure', 'A');
+    // π/4 (32² - 20²) = 490.09 mm²; 300 N make 0.61213 MPa.
+    for (const Fa of [300, -300]) expect(at(check, [50, 70, Fa, 1, 2, 3]).demand).toBeCloseTo(300 / 490.0885e-6, -2);
+    expect(check).toMatchObject({ allowable: 9e6, source: 'target of the arm file', unit: 'Pa' });
+    expect(at(check, [900, 0, 0, 0, 0, 0]).demand).toBe(0);
+  });
+
+  it('stands in for the thrust that a bushing without a flange must not see', () => {
+    expect(pair('A').has('thrust', 'A')).toBe(false);
+    expect(pair('B').has('flange pressure', 'A')).toBe(false);
+    const { flange_outer_mm: _, ...bare } = bush;
+    expect(pair('A', bare).has('flange pressure', 'A')).toBe(false);
+    expect(pair('A', bare).has('thrust', 'A')).toBe(true);
+    // By its direction: A takes what points along + axis alone.
+    const both = pair('both').of('flange pressure', 'A');
+    expect(at(both, [0, 0, -300, 0, 0, 0]).demand).toBe(0);
+    expect(at(both, [0, 0, 300, 0, 0, 0]).demand).toBeGreaterThan(6e5);
+  });
+});
+
 describe('thrust', () => {
   const roller: BearingFile = { kind: 'cylindrical-roller', ...SIZE, C0_N: 14000 };
   it('is checked only where the bearing that locates takes none', () => {

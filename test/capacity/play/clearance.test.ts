@@ -42,6 +42,9 @@ const BUSHING: PlainBushing = {
   pressureLimit: null,
   speedLimit: null,
   pvLimit: null,
+  flangeOuter: null,
+  wearFactor: null,
+  wearDepth: null,
   clearance: 4e-5,
   stiffness: null,
   source: null,
@@ -189,12 +192,14 @@ describe('clearance before fitting', () => {
     expect(clearance({ clearance: 'C3' })).toEqual([13, 28]);
     expect(clearance({ bore: 0.01 })).toEqual([2, 13]);
     expect(clearance({ bore: 0.012, clearance: 'C4' })).toEqual([18, 33]);
+    expect(clearance({ clearance: 'C5' })).toEqual([28, 48]);
     expect(clearance({ kind: 'cylindrical-roller', bore: 0.025 })).toEqual([20, 45]);
+    expect(clearance({ kind: 'needle', bore: 0.025, clearance: 'C5' })).toEqual([70, 95]);
   });
 
   it('groups rise at every bore and kind, and limits do not fall with the bore', () => {
     for (const kind of ['deep-groove', 'cylindrical-roller'] as const) {
-      for (const group of ['C2', 'CN', 'C3'] as const) {
+      for (const [k, group] of (['C2', 'CN', 'C3', 'C4', 'C5'] as const).entries()) {
         let last: readonly [number, number] = [-1, -1];
         for (const mm of [11, 12, 15, 17, 20, 25, 30, 35, 40, 45, 50, 55, 60]) {
           const here = clearance({ kind, bore: mm / 1e3, clearance: group });
@@ -202,10 +207,13 @@ describe('clearance before fitting', () => {
           expect(here[0]).toBeGreaterThanOrEqual(last[0]);
           expect(here[1]).toBeGreaterThanOrEqual(last[1]);
           last = here;
-          const higher = clearance({ kind, bore: mm / 1e3, clearance: group === 'C2' ? 'CN' : 'C3' });
+          const next = (['CN', 'C3', 'C4', 'C5', 'C5'] as const)[k]!;
+          const higher = clearance({ kind, bore: mm / 1e3, clearance: next });
           if (typeof higher === 'string') throw new Error(higher);
           expect(higher[0]).toBeGreaterThanOrEqual(here[0]);
           expect(higher[1]).toBeGreaterThanOrEqual(here[1]);
+          // Groups overlap: no clearance between the least of one and the most of the next is left out.
+          expect(higher[0]).toBeLessThanOrEqual(here[1]);
         }
       }
     }
@@ -222,11 +230,11 @@ describe('clearance before fitting', () => {
     for (const change of [
       { kind: 'angular-contact' },
       { kind: 'self-aligning-ball' },
-      { clearance: 'C5' },
+      { clearance: 'C5', bore: 0.005 },
       { bore: 0.07 },
       { bore: 0.002 },
       { bore: Number.NaN },
-      { kind: 'needle', clearance: 'C4' },
+      { kind: 'needle', bore: 0.008 },
       { clearance: { from: 2e-6, to: 1e-6 } },
       { clearance: { from: Number.NaN, to: 1e-6 } },
     ] as const) {
@@ -290,7 +298,7 @@ describe('working clearance', () => {
 
   it('unassessed where the group, a fit or the ring tolerance is not known', () => {
     const changes = [
-      { clearance: 'C5' },
+      { clearance: 'C5', bore: 0.005 },
       { shaftFit: 'r6' },
       { housingFit: 'k5' },
       { bore: 0.09, clearance: { from: 0, to: 1e-5 }, shaftFit: 'k5' },
