@@ -11,6 +11,7 @@ import type { Chain, ChainCase } from './chain.ts';
 import { type CheckForm, type Form, form } from './form.ts';
 import { freePart, newFreeWorst } from './freeLoads.ts';
 import { MotionBox } from './motionBox.ts';
+import { nothingBound } from './motionNothing.ts';
 import { Polish } from './polish.ts';
 
 export interface MotionSearchOptions {
@@ -32,6 +33,8 @@ interface Piece {
 const TORQUE = form({ P: [[0, 0, 0, 0, 0, 1]] });
 /** What lies below this share of the ceiling counts as nothing. */
 const NOTHING = 1e-9;
+/** What a pose may give for that to be shown by poses. */
+const SMALL = 1e-13;
 const KEPT = 1 << 16;
 const KEPT_MANY = 1 << 14;
 /** Joints up to which boxes are kept in plenty: with more the proof does not end anyway, and every box is larger. */
@@ -88,7 +91,10 @@ export class MotionSearch {
     this.trial = new Float64Array(n);
     for (const seed of options.seeds ?? []) this.offer(seed);
     this.firstPoses();
-    this.firstBoxes();
+    const nothing =
+      this.found <= NOTHING * this.ceiling ? nothingBound(chain, load, check, SMALL * this.ceiling) : Number.NaN;
+    if (nothing <= NOTHING * this.ceiling) this.closed = nothing;
+    else this.firstBoxes();
   }
 
   get bound(): number {

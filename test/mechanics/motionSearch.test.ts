@@ -46,6 +46,24 @@ function swing(speed: number, accel: number): Arm {
   };
 }
 
+/** Links one after the other, all turning about level axes in one upright plane. */
+function planar(joints: number): Arm {
+  const one = swing(3, 20);
+  const none = { xx: 0.02, yy: 0.03, zz: 0.03, xy: 0, xz: 0, yz: 0 };
+  const link = (k: number) => ({
+    ...one.joints[0]!,
+    name: `joint ${k}`,
+    placement: { ...one.joints[0]!.placement, position: [k > 0 ? 0.4 : 0, 0, 0] as const },
+    link: { name: `link ${k}`, mass: 2 + k, centre: [0.2, 0, 0.01] as const, inertia: none },
+  });
+  const all = (value: number) => Array.from({ length: joints }, () => value);
+  return {
+    ...one,
+    joints: Array.from({ length: joints }, (_, k) => link(k)),
+    cases: [{ ...one.cases[0]!, motion: { speed: all(3), accel: all(20) } }],
+  };
+}
+
 function searched(arm: Arm, name: string, bearing: 'A' | 'B' | null, gap: number, boxes = 40_000) {
   const chain = flattenArm(arm);
   const check = loadChecks(arm, chain).find((c) => c.check === name && c.bearing === bearing)!;
@@ -104,6 +122,26 @@ describe('the certified worst in motion', () => {
       }
     },
   );
+
+  it.each([1, 2, 3, 4])('knows that a linkage in a plane has no thrust and does not tilt: %i joints', (joints) => {
+    const arm = planar(joints);
+    const chain = flattenArm(arm);
+    for (const check of loadChecks(arm, chain).filter((c) => c.check === 'thrust+' || c.check === 'moment')) {
+      const search = new MotionSearch(chain, chain.cases[0]!, check, { gap: 0.001 });
+      expect(search.done, check.check).toBe(true);
+      expect(search.bound).toBeLessThanOrEqual(1e-9 * search.ceiling);
+      // a centre of mass out of the plane tilts it
+      const [first, ...rest] = arm.joints;
+      const { link } = first!;
+      const tilted: Arm = {
+        ...arm,
+        joints: [{ ...first!, link: { ...link, centre: [link.centre[0], 0.01, link.centre[2]] } }, ...rest],
+      };
+      const other = flattenArm(tilted);
+      if (check.joint > 0 || check.check !== 'moment') continue;
+      expect(new MotionSearch(other, other.cases[0]!, check, { gap: 0.5 }).found).toBeGreaterThan(0.01);
+    }
+  });
 
   it('keeps a bound that is one when its boxes run out', () => {
     const arm = randomArm(9, { joints: 4, motion: true });
