@@ -13,6 +13,8 @@ import { exitOf, rowObject } from './rowObjects.ts';
 import { type ComparisonOptions, runComparison } from './runComparison.ts';
 
 export interface CompareOptions extends ComparisonOptions {
+  /** CSV table of the user's own bearings. */
+  readonly bearings?: string;
   readonly joint: string;
   readonly case?: readonly string[];
   /** mm. */
@@ -24,7 +26,7 @@ export interface CompareOptions extends ComparisonOptions {
 }
 
 export async function compare(file: string, options: CompareOptions): Promise<ExitCode> {
-  const opened = await openArm(file, options.json === true);
+  const opened = await openArm(file, options.json === true, options.bearings);
   const { arm, chain } = onlyCases(opened, chooseCases(opened.arm, options.case));
   const metres = (mm: number | undefined) => (mm === undefined ? undefined : toSI(mm, 'mm'));
   const plan = planCompare(arm, chain, options.joint, {

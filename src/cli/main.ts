@@ -9,6 +9,8 @@ const FILE_HELP = 'arm file (*.arm.json), or - for standard input';
 
 const STRICT_HELP = 'exit code 1 also where something could not be assessed against a limit';
 
+const BEARINGS_HELP = "CSV table of your own bearings: those that the arm names are taken from it, before the file's";
+
 const collect = (name: string, before: readonly string[] = []): readonly string[] => [...before, name];
 
 function buildProgram(end: (code: ExitCode) => void): Command {
@@ -67,6 +69,7 @@ A design aid: results are to be checked by a competent engineer.`,
   )
     .requiredOption('--at <angles>', 'joint angles in degrees, from the ground to the tip, such as -10,20', angleList)
     .option('--case <name>', 'only this load case; may be given again', collect)
+    .option('--bearings <file>', BEARINGS_HELP)
     .option('--strict', STRICT_HELP);
 
   const overGrid = (command: Command, otherwise: string) =>
@@ -82,6 +85,7 @@ A design aid: results are to be checked by a competent engineer.`,
         wholeNumber(2, 1e6),
       )
       .option('--case <name>', 'only this load case; may be given again', collect)
+      .option('--bearings <file>', BEARINGS_HELP)
       .option('--workers <count>', 'threads; the result is the same for any number', wholeNumber(1, 64));
   const withProof = (command: Command) =>
     command
@@ -113,6 +117,7 @@ A design aid: results are to be checked by a competent engineer.`,
     ),
   )
     .option('--case <name>', 'only this load case; may be given again', collect)
+    .option('--bearings <file>', BEARINGS_HELP)
     .option('--each-case', 'the worst case by case instead of over all cases')
     .option('--strict', STRICT_HELP)
     .option('--workers <count>', 'threads', wholeNumber(1, 64));

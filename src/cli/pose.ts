@@ -17,6 +17,8 @@ import { armObjects, exitOf, rowObject } from './rowObjects.ts';
 import { isJudged } from './shownRows.ts';
 
 export interface PoseOptions {
+  /** CSV table of the user's own bearings. */
+  readonly bearings?: string;
   /** Degrees. */
   readonly at: readonly number[];
   readonly case?: readonly string[];
@@ -25,7 +27,7 @@ export interface PoseOptions {
 }
 
 export async function pose(file: string, options: PoseOptions): Promise<ExitCode> {
-  const { arm, chain } = await openArm(file, options.json === true);
+  const { arm, chain } = await openArm(file, options.json === true, options.bearings);
   if (options.at.length !== chain.n) {
     const angles = `${options.at.length} ${options.at.length === 1 ? 'angle' : 'angles'}`;
     throw new UsageError(`--at has ${angles}, but the arm turns in ${chain.n}: ${chain.names.join(', ')}`);

@@ -15,6 +15,8 @@ import { rowTables } from './shownRows.ts';
 import { sweepText } from './sweepText.ts';
 
 export interface SweepOptions extends GridOptions {
+  /** CSV table of the user's own bearings. */
+  readonly bearings?: string;
   readonly case?: readonly string[];
   readonly eachCase?: boolean;
   readonly json?: boolean;
@@ -23,7 +25,7 @@ export interface SweepOptions extends GridOptions {
 }
 
 export async function sweep(file: string, options: SweepOptions): Promise<ExitCode> {
-  const { arm, chain } = await openArm(file, options.json === true);
+  const { arm, chain } = await openArm(file, options.json === true, options.bearings);
   const cases = chooseCases(arm, options.case);
   const { choice, poses } = gridChoice(chain, options);
   const { checks, leftOut } = sweepChecks(arm, chain, poses, cases);

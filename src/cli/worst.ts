@@ -16,6 +16,8 @@ import { rowTables } from './shownRows.ts';
 import { withPatience } from './withPatience.ts';
 
 export interface WorstOptions {
+  /** CSV table of the user's own bearings. */
+  readonly bearings?: string;
   readonly gap?: number;
   readonly seconds?: number;
   readonly case?: readonly string[];
@@ -28,7 +30,7 @@ export interface WorstOptions {
 const NOTHING_YET: WorstResult = { rows: [], eachCase: [], seconds: 0, certified: false, partial: true };
 
 export async function worst(file: string, options: WorstOptions): Promise<ExitCode> {
-  const opened = await openArm(file, options.json === true);
+  const opened = await openArm(file, options.json === true, options.bearings);
   const { arm, chain } = onlyCases(opened, chooseCases(opened.arm, options.case));
   const gap = options.gap ?? DEFAULT_GAP;
   const seconds = options.seconds ?? DEFAULT_SECONDS;

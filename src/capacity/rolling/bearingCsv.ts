@@ -21,6 +21,8 @@ export interface CsvIssue {
 export interface BearingCsvReading {
   /** The sound bearings by name; those with issues are left out. */
   readonly bearings: Readonly<Record<string, Bearing>>;
+  /** The same in the form of the arm file's `bearings`, to be put into one. */
+  readonly files: Readonly<Record<string, BearingFile>>;
   readonly issues: readonly CsvIssue[];
 }
 
@@ -117,7 +119,7 @@ export function readBearingCsv(text: string): BearingCsvReading {
     issues.push({ code, line: place.line, column: place.column, found, expected });
   };
   const start = { line: 1, column: 1 };
-  const refused = (): BearingCsvReading => ({ bearings: {}, issues });
+  const refused = (): BearingCsvReading => ({ bearings: {}, files: {}, issues });
 
   if (text.length > MAX_TEXT_BYTES) {
     report('too-long', start, 'more than 8 MiB of text', 'at most 8 MiB');
@@ -150,6 +152,7 @@ export function readBearingCsv(text: string): BearingCsvReading {
 
   const column = (key: string) => keys.indexOf(key);
   const bearings = new Map<string, Bearing>();
+  const files = new Map<string, BearingFile>();
   const names = new Set<string>();
   for (const record of records.slice(1, MAX_ROWS + 1)) {
     if (issues.length >= MAX_ISSUES) break;
@@ -183,8 +186,10 @@ export function readBearingCsv(text: string): BearingCsvReading {
     // What is already reported as no number would be reported again as missing.
     if (issues.length > before) continue;
     const reading = readArmValue(armAround(name, bearing));
-    if (reading.ok) bearings.set(name, reading.arm.bearings[name]!);
-    else {
+    if (reading.ok) {
+      bearings.set(name, reading.arm.bearings[name]!);
+      files.set(name, reading.file.bearings![name]!);
+    } else {
       for (const issue of reading.issues) {
         const key = issue.path[2];
         const at = typeof key === 'string' ? column(key) : column('name');
@@ -192,7 +197,7 @@ export function readBearingCsv(text: string): BearingCsvReading {
       }
     }
   }
-  return { bearings: Object.fromEntries(bearings), issues };
+  return { bearings: Object.fromEntries(bearings), files: Object.fromEntries(files), issues };
 }
 
 /** The sentence for an issue of a table. */
