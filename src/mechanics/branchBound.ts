@@ -7,7 +7,7 @@
 import { seededRandom } from '../math/random.ts';
 import type { Flat, Numbers } from '../math/vector.ts';
 import { BoxBound } from './branchBoundBox.ts';
-import { formsAt, sameAllRound } from './branchBoundForms.ts';
+import { formsAt } from './branchBoundForms.ts';
 import { InboardDirections } from './branchBoundInboard.ts';
 import { BoxQueue } from './branchBoundQueue.ts';
 import { shrinkBox } from './branchBoundShrink.ts';
@@ -16,6 +16,7 @@ import { type CheckForm, type Form, form } from './form.ts';
 import { type FreePart, freePart, newFreeWorst } from './freeLoads.ts';
 import { COARSE_CELLS, TOP_LEVEL } from './outwardSets.ts';
 import { Polish } from './polish.ts';
+import { allRound, FAR, sameAllRound } from './roundForms.ts';
 
 export interface BranchBoundOptions {
   /** Relative gap asked for: (bound - found)/bound. */
@@ -49,6 +50,8 @@ const TORQUE = form({ P: [[0, 0, 0, 0, 0, 1]] });
 /** What lies below this share of the ceiling counts as nothing. */
 const NOTHING = 1e-9;
 const FEW = 1 << 21;
+/** Share of the gap that forms all round may lie above what is attained. */
+const NEAR = 0.6;
 const RANDOM_POSES = 64;
 const CLIMBS = 3;
 
@@ -86,7 +89,10 @@ export class BranchBound {
     this.pose = new Float64Array(n);
     this.worst = newFreeWorst(n);
     this.climber = new Polish(chain, load, check);
-    const forms = formsAt(chain, load, check.joint, check.forms);
+    this.trial = new Float64Array(n);
+    for (const seed of options.seeds ?? []) this.offer(seed);
+    this.firstPoses();
+    const forms = this.formsFor(check);
     // A form that is the same all round the axis may be read in the link's frame, where joint i turns gravity alone
     this.inLink = load.force !== 'base' && forms.every(sameAllRound);
     const makeDirections = (joint: number, inLink: boolean) => new InboardDirections(chain, joint, inLink);
@@ -110,9 +116,6 @@ export class BranchBound {
     this.high = new Float64Array(n + 2);
     this.keptLow = new Float64Array(n + 2);
     this.keptHigh = new Float64Array(n + 2);
-    this.trial = new Float64Array(n);
-    for (const seed of options.seeds ?? []) this.offer(seed);
-    this.firstPoses();
     this.firstBoxes();
   }
 
@@ -161,6 +164,18 @@ export class BranchBound {
     this.worst.speed.set(worst.speed);
     this.worst.accel.set(worst.accel);
     this.worst.wrench.set(worst.wrench);
+  }
+
+  /** The check's forms, or forms of the same value all round that bound them where those come near enough: they need no angle of the joint. */
+  private formsFor(check: CheckForm): readonly Form[] {
+    const { chain, load } = this;
+    const forms = formsAt(chain, load, check.joint, check.forms);
+    const far = chain.to[check.joint]! - chain.from[check.joint]! >= FAR;
+    if (load.force === 'base' || !far || forms.every(sameAllRound)) return forms;
+    const round = allRound(forms);
+    if (!round) return forms;
+    const most = new Polish(chain, load, { ...check, forms: round }).climb(Float64Array.from(this.pose));
+    return most <= this.found * (1 + NEAR * this.gap) ? round : forms;
   }
 
   private firstPoses(): void {

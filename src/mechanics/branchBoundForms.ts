@@ -1,25 +1,7 @@
-/** What branch and bound makes of a check's forms before it starts: which turn with the axis, and which need no drive torque. */
-import type { Numbers } from '../math/vector.ts';
+/** What branch and bound makes of a check's forms before it starts. */
 import { InboardDirections } from './branchBoundInboard.ts';
 import { type Chain, type ChainCase, WRENCH } from './chain.ts';
 import type { Form } from './form.ts';
-
-/** Whether a form keeps its value when the load turns about the z axis: rows that turn into each other, or that look along z. */
-export function sameAllRound(f: Form): boolean {
-  const { P, c, l } = f;
-  const along = (row: Numbers, at: number) => [0, 1, 3, 4].every((k) => row[at + k] === 0);
-  if (!along(l, 0) || f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY) return false;
-  const pair = f.rows >= 2 && !(along(P, 0) && along(P, WRENCH));
-  for (let r = pair ? 2 : 0; r < f.rows; r++) if (!along(P, WRENCH * r)) return false;
-  if (!pair) return true;
-  if (c[0] !== 0 || c[1] !== 0) return false;
-  // second row = first row turned by a right angle: R P = P R for every turn R
-  for (const k of [0, 3]) {
-    const [a, b, d, e] = [P[k]!, P[k + 1]!, P[WRENCH + k]!, P[WRENCH + k + 1]!];
-    if (a !== e || b !== -d || P[k + 2] !== 0 || P[WRENCH + k + 2] !== 0) return false;
-  }
-  return true;
-}
 
 /** Weights alone on a joint whose axis always lies along gravity: they turn nothing about it. */
 function turnsNothing(chain: Chain, load: ChainCase, joint: number): boolean {

@@ -11,6 +11,7 @@ import { WRENCH } from './chain.ts';
 import { type Form, form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import type { OutwardSets } from './outwardSets.ts';
+import type { RoundForm } from './roundForms.ts';
 import { TipPush } from './tipPush.ts';
 
 /** What a search needs of a form's bounds; see GravityCheck. */
@@ -23,6 +24,7 @@ interface Rib {
   level: number;
 }
 
+const UPRIGHT = { lean: new Float64Array(WRENCH), leanO: 0 };
 /** Angle between the first ribs; each level allows half of it. */
 const WIDEST = Math.PI / 4;
 
@@ -34,7 +36,7 @@ export class FanCheck implements SphereCheck {
   /** Price of overshooting the linear part. */
   private readonly kappa: number;
 
-  /** `tip`: as of `TipPush`; null: no push. */
+  /** `tip`: as of `TipPush`; null: no push. `lean`: in cos ψ ‖(y1, y2)‖ the norm is this much more. */
   constructor(
     sets: OutwardSets,
     joint: number,
@@ -43,6 +45,7 @@ export class FanCheck implements SphereCheck {
     down: ArrayLike<number>,
     inLink = false,
     tip: OutwardSets | null = null,
+    { lean, leanO }: Pick<RoundForm, 'lean' | 'leanO'> = UPRIGHT,
   ) {
     const rows = [0, 1, 2].map((r) => f.P.slice(WRENCH * r, WRENCH * (r + 1)));
     const search = (part: Form) =>
@@ -51,9 +54,9 @@ export class FanCheck implements SphereCheck {
       const c = Math.cos(angle);
       const s = Math.sin(angle);
       const scaled = [rows[0]!, rows[1]!].map((row) => Array.from(row, (v) => c * v));
-      const l = Array.from(f.l, (v, k) => v + s * rows[2]![k]!);
+      const l = Array.from(f.l, (v, k) => v + s * rows[2]![k]! + c * lean[k]!);
       const [a, b, third] = [f.c[0]!, f.c[1]!, f.c[2]!];
-      const part = form({ P: scaled, l, c: [c * a, c * b], o: f.o + s * third });
+      const part = form({ P: scaled, l, c: [c * a, c * b], o: f.o + s * third + c * leanO });
       return { angle, check: search(part), bound: Number.POSITIVE_INFINITY, level: -1 };
     };
     this.ribs = [-2, -1, 0, 1, 2].map((k) => this.make(k * WIDEST));

@@ -6,15 +6,15 @@
  * direction like that of weights alone, is carried back to the base by `GravityCheck`. It is tight where weights and force want
  * the same pose outboard. What gap is left where they do not, branch and bound closes.
  *
- * Where a form cannot tell the joint's housing from its link, all is seen from the link: then both have the joint itself at the same angle.
+ * Where a form cannot tell the joint's housing from its link, all is seen from the link: then both have the joint itself at the same angle. Where
+ * it can, but is bounded by forms that cannot (`roundForms`), those stand for it if the joint turns far enough for them to be near.
  */
-import { sameAllRound } from './branchBoundForms.ts';
 import type { Chain, ChainCase } from './chain.ts';
 import { FanCheck, type SphereCheck } from './fanCheck.ts';
-import type { Form } from './form.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import { type CheckState, gapOf, overshoot, ROUNDING } from './gravitySearch.ts';
 import type { GravityMass, OutwardSets } from './outwardSets.ts';
+import { FAR, leaned, type RoundForm, roundForms, sameAllRound, upright } from './roundForms.ts';
 import { TipPush } from './tipPush.ts';
 
 /** Finer tables than this no longer pay: branch and bound takes over. */
@@ -39,14 +39,18 @@ export class FreeForceSearch {
     const g = Math.hypot(...chain.gravity);
     const down = g > 0 ? chain.gravity.map((v) => v / g) : [0, 0, -1];
     this.state = state;
-    const inLink = forms.every(sameAllRound);
-    this.raised = Math.max(0, ...forms.map((f) => Math.hypot(...f.c) - f.o));
-    const search = (f: Form): SphereCheck =>
-      f.rows === 3
-        ? new FanCheck(weights, joint, f, g, down, inLink, tip)
-        : new GravityCheck(weights, joint, f, g, down, inLink, new TipPush(tip, joint, f, inLink));
-    this.parts = forms.map((f) => ({
-      search: search({ ...f, o: f.o + this.raised }),
+    const far = chain.to[joint]! - chain.from[joint]! >= FAR;
+    const round = far || forms.every(sameAllRound) ? roundForms(forms) : null;
+    const inLink = round !== null;
+    const used = round ?? forms.map(upright);
+    this.raised = Math.max(0, ...used.map(({ form: f, leanO }) => Math.hypot(...f.c) + Math.abs(leanO) - f.o));
+    const search = ({ form: f, lean, leanO }: RoundForm): SphereCheck => {
+      if (f.rows === 3) return new FanCheck(weights, joint, f, g, down, inLink, tip, { lean, leanO });
+      const plain = leaned({ form: f, lean, leanO });
+      return new GravityCheck(weights, joint, plain, g, down, inLink, new TipPush(tip, joint, plain, inLink));
+    };
+    this.parts = used.map((one) => ({
+      search: search({ ...one, form: { ...one.form, o: one.form.o + this.raised } }),
       bound: Number.POSITIVE_INFINITY,
     }));
     this.last = forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;

@@ -1,7 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { Arm } from '../../src/arm/arm.ts';
 import { seededRandom } from '../../src/math/random.ts';
-import { sameAllRound } from '../../src/mechanics/branchBoundForms.ts';
 import { type Chain, type ChainCase, flattenArm } from '../../src/mechanics/chain.ts';
 import { type CheckForm, type Form, form } from '../../src/mechanics/form.ts';
 import { FreeForceSearch, tipMass } from '../../src/mechanics/freeForceSearch.ts';
@@ -12,6 +11,7 @@ import type { CheckState } from '../../src/mechanics/gravitySearch.ts';
 import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { OutwardSets } from '../../src/mechanics/outwardSets.ts';
 import { polish } from '../../src/mechanics/polish.ts';
+import { sameAllRound } from '../../src/mechanics/roundForms.ts';
 import { TipPush } from '../../src/mechanics/tipPush.ts';
 import { type RandomArmOptions, randomArm } from '../randomArm.ts';
 
