@@ -262,7 +262,7 @@ export class MotionChain {
         // what gravity does along the first axis does not change with its angle
         if (m === 0) addAlong(still, F, [0, 0, down[2]!], 1);
         blame[m]! += (m === 0 ? Math.hypot(down[0]!, down[1]!) : this.forceWeight) * this.swing(box, angles, m, F, 1);
-        if (moving) blame[m]! += this.momentWeight * this.swingMatrix(box, angles, m, K);
+        if (moving && m > 0) blame[m]! += this.momentWeight * this.swingMatrix(box, angles, m, K);
         if (load.force === 'base') blame[m]! += load.magnitude * this.swing(box, angles, m, tip, 1);
         c[m]!.clear();
         if (m > 0 && load.speed && load.speed[m]! > 0) {

@@ -16,9 +16,10 @@ import { linearTerm, Series, type SeriesBox, squareTerm, termCount } from './mot
 
 /** Signs of accelerations tried both ways at most, and choices of ends of speeds and such signs together. */
 const SIGNS = 5;
-const CHOICES = 64;
-/** A speed whose products all together are below this share of what is close enough is not tried. */
+const CHOICES = 128;
+/** A speed is not tried whose products together are below this share of what is close enough, or of the remainders. */
 const SLIGHT = 2e-3;
+const SLIGHT_BESIDE = 0.05;
 
 /** The most of a series over its box, term by term, and where it may come up to something. */
 export class MotionRates {
@@ -50,6 +51,7 @@ export class MotionRates {
   private low: Flat | null = null;
   private high: Flat | null = null;
   private at = 0;
+  private first = -1;
 
   constructor(n: number, variables: number) {
     const flat = (size: number) => new Float64Array(size);
@@ -140,7 +142,10 @@ export class MotionRates {
   private takeSpeeds(): void {
     const { n, parts, box, low, high, at, slackX, slight } = this;
     let choices = 2 ** this.openCount;
-    const least = SLIGHT * Math.max(0, this.enough);
+    let rests = this.added;
+    for (const C of parts!.rate) rests += C.rest;
+    const least = Math.max(SLIGHT * Math.max(0, this.enough), SLIGHT_BESIDE * rests);
+    let even = true;
     for (let j = 0; j < n; j++) {
       const C = parts!.rate[pairIndex(n, j, j)]!;
       const [a, b] = [low![at + j]!, high![at + j]!];
@@ -156,8 +161,12 @@ export class MotionRates {
         if (k !== j) size += sizeOf(box!, parts!.rate[k < j ? pairIndex(n, k, j) : pairIndex(n, j, k)]!);
       }
       slight[j] = size <= least ? 1 : 0;
+      if (a !== -b) even = false;
       if (a < b && slight[j] === 0) choices *= 2;
     }
+    // turned round, all speeds give the same: of the first one end will do
+    this.first = even ? slight.indexOf(0) : -1;
+    if (this.first >= 0) choices /= 2;
     const loose = choices > CHOICES;
     for (let j = 0; j < n; j++) {
       if (loose) slight[j] = 1;
@@ -202,7 +211,7 @@ export class MotionRates {
     const [a, b] = [low![at + j]!, high![at + j]!];
     trialX[j] = slight[j] === 1 ? 0 : b;
     this.chooseSpeed(j + 1);
-    if (a === b || slight[j] === 1) return;
+    if (a === b || slight[j] === 1 || j === this.first) return;
     trialX[j] = a;
     this.chooseSpeed(j + 1);
   }

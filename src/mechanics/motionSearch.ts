@@ -36,9 +36,6 @@ const NOTHING = 1e-9;
 /** What a pose may give for that to be shown by poses. */
 const SMALL = 1e-13;
 const KEPT = 1 << 16;
-const KEPT_MANY = 1 << 14;
-/** Joints up to which boxes are kept in plenty: with more the proof does not end anyway, and every box is larger. */
-const FEW_JOINTS = 3;
 const RANDOM_POSES = 24;
 const CLIMBS = 2;
 /** First arcs of e: round the circle, and from pole to pole. */
@@ -83,7 +80,7 @@ export class MotionSearch {
     }));
     this.ceiling = Math.max(...this.pieces.map((piece) => piece.box.ceiling()));
     const { size } = this.pieces[0]!.box;
-    this.queue = new BoxQueue(size, options.most ?? (n > FEW_JOINTS ? KEPT_MANY : KEPT));
+    this.queue = new BoxQueue(size, options.most ?? KEPT);
     this.low = new Float64Array(size);
     this.high = new Float64Array(size);
     this.keptLow = new Float64Array(size);
@@ -186,12 +183,9 @@ export class MotionSearch {
     high[n] = b;
     low[n + 1] = c;
     high[n + 1] = d;
-    // All speeds turned round load the arm the same: one of them may be taken as positive.
-    let positive = -1;
     for (let k = 0; k < n; k++) {
       const fast = load.speed && load.speed[k]! > 0;
-      if (fast && positive < 0) positive = k;
-      low[speeds + k] = fast && k !== positive ? -1 : 0;
+      low[speeds + k] = fast ? -1 : 0;
       high[speeds + k] = fast ? 1 : 0;
     }
     this.assess(index, Number.POSITIVE_INFINITY);
