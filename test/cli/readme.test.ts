@@ -33,7 +33,7 @@ function fieldTable(): string {
 describe('README', () => {
   it('shows examples that are what the program prints', async () => {
     const blocks = [...readme().matchAll(BLOCK)];
-    expect(blocks.map((m) => words(m[1]!)[0])).toEqual(['pose', 'sweep', 'compare']);
+    expect(blocks.map((m) => words(m[1]!)[0])).toEqual(['pose', 'sweep', 'worst', 'compare']);
     let text = readme();
     for (const [whole, command, shown] of blocks) {
       const ran = await armload(words(command!));
