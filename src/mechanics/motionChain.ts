@@ -207,16 +207,13 @@ export class MotionChain {
     }
     const speed = load.speed?.[m] ?? 0;
     if (!(speed > 0)) return;
-    for (const [out, place, scale] of [
-      [C, 0, speed * speed],
-      [way, 2, 1],
-    ] as const) {
-      box.addProduct(out, place, h, 0, w, 0, scale);
-      box.addProduct(out, place, h, 1, w, 1, scale);
-      box.addProduct(out, place, S, 2, b, 1, scale);
-      box.addProduct(out, place, S, 5, b, 0, -scale);
-      if (m === 0) return;
-    }
+    box.addProduct(C, 0, h, 0, w, 0, 1);
+    box.addProduct(C, 0, h, 1, w, 1, 1);
+    box.addProduct(C, 0, S, 2, b, 1, 1);
+    box.addProduct(C, 0, S, 5, b, 0, -1);
+    if (m > 0) addToPart(way, 2, C);
+    C.scale(speed * speed);
+    if (m === 0) return;
     box.addProduct(way, 0, h, 0, w, 2, -1);
     box.addProduct(way, 0, S, 1, b, 0, -1);
     box.addProduct(way, 0, S, 0, b, 1, 1);
@@ -382,6 +379,13 @@ function addAlong(out: Series, v: Series, way: ArrayLike<number>, scale: number)
     out.c[t]! += scale * (way[0]! * v.c[3 * t]! + way[1]! * v.c[3 * t + 1]! + way[2]! * v.c[3 * t + 2]!);
   }
   out.rest += Math.abs(scale) * Math.hypot(way[0]!, way[1]!, way[2]!) * v.rest;
+}
+
+/** out's part += a number. */
+function addToPart(out: Series, part: number, v: Series): void {
+  out.grow(v.live);
+  for (let t = 0; t < termCount(v.live); t++) out.c[3 * t + part]! += v.c[t]!;
+  out.rest += v.rest;
 }
 
 /** out += scale · part of a vector. */

@@ -41,7 +41,8 @@ export class Series {
   }
 
   clear(): void {
-    this.c.fill(0, 0, this.width * termCount(this.live));
+    const count = this.width * termCount(this.live);
+    for (let t = 0; t < count; t++) this.c[t] = 0;
     this.live = 0;
     this.rest = 0;
   }
@@ -49,8 +50,9 @@ export class Series {
   copy(from: Series): void {
     const old = this.width * termCount(this.live);
     const count = this.width * termCount(from.live);
-    this.c.set(from.c.subarray(0, count));
-    if (old > count) this.c.fill(0, count, old);
+    // a loop: a view for every copy costs more
+    for (let t = 0; t < count; t++) this.c[t] = from.c[t]!;
+    for (let t = count; t < old; t++) this.c[t] = 0;
     this.live = from.live;
     this.rest = from.rest;
   }
@@ -58,6 +60,13 @@ export class Series {
   /** Makes room for the first `live` variables. Terms behind the present ones are zero. */
   grow(live: number): void {
     if (live > this.live) this.live = live;
+  }
+
+  /** this *= factor. */
+  scale(factor: number): void {
+    const count = this.width * termCount(this.live);
+    for (let t = 0; t < count; t++) this.c[t]! *= factor;
+    this.rest *= Math.abs(factor);
   }
 
   /** this += scale · from, of the same width. */
@@ -247,7 +256,10 @@ export class SeriesBox {
     const a0 = ac[p]!;
     const b0 = bc[q]!;
     oc[place]! += scale * a0 * b0;
-    let [a1, a2, b1, b2] = [0, 0, 0, 0];
+    let a1 = 0;
+    let a2 = 0;
+    let b1 = 0;
+    let b2 = 0;
     for (let t = 1; t < termCount(a.live); t++) {
       const v = ac[aw * t + p]!;
       if (v === 0) continue;
@@ -311,9 +323,17 @@ function addTurned(c: Flat, to: number, from: number, scale: number): void {
 /** Turns every term of a vector by a constant matrix: out = M v, or Mᵀ v. `out` may be `v`. */
 export function turnSeries(out: Series, v: Series, m: Numbers, mo: number, back: boolean): void {
   const count = termCount(v.live);
-  const [a, b, c, d, e, f, g, h, i] = back
-    ? [m[mo]!, m[mo + 3]!, m[mo + 6]!, m[mo + 1]!, m[mo + 4]!, m[mo + 7]!, m[mo + 2]!, m[mo + 5]!, m[mo + 8]!]
-    : [m[mo]!, m[mo + 1]!, m[mo + 2]!, m[mo + 3]!, m[mo + 4]!, m[mo + 5]!, m[mo + 6]!, m[mo + 7]!, m[mo + 8]!];
+  const row = back ? 1 : 3;
+  const column = back ? 3 : 1;
+  const a = m[mo]!;
+  const b = m[mo + column]!;
+  const c = m[mo + 2 * column]!;
+  const d = m[mo + row]!;
+  const e = m[mo + row + column]!;
+  const f = m[mo + row + 2 * column]!;
+  const g = m[mo + 2 * row]!;
+  const h = m[mo + 2 * row + column]!;
+  const i = m[mo + 2 * row + 2 * column]!;
   const from = v.c;
   const to = out.c;
   for (let t = 0; t < 3 * count; t += 3) {
@@ -333,9 +353,15 @@ export function turnSeries(out: Series, v: Series, m: Numbers, mo: number, back:
 export function turnMatrixSeries(k: Series, m: Numbers, mo: number): void {
   const count = 9 * termCount(k.live);
   const { c } = k;
-  const [a, b, d] = [m[mo]!, m[mo + 1]!, m[mo + 2]!];
-  const [e, f, g] = [m[mo + 3]!, m[mo + 4]!, m[mo + 5]!];
-  const [h, i, j] = [m[mo + 6]!, m[mo + 7]!, m[mo + 8]!];
+  const a = m[mo]!;
+  const b = m[mo + 1]!;
+  const d = m[mo + 2]!;
+  const e = m[mo + 3]!;
+  const f = m[mo + 4]!;
+  const g = m[mo + 5]!;
+  const h = m[mo + 6]!;
+  const i = m[mo + 7]!;
+  const j = m[mo + 8]!;
   for (let t = 0; t < count; t += 9) {
     // rows: N = K Mᵀ, then M N, column by column
     for (let r = t; r < t + 9; r += 3) {
