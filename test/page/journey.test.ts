@@ -204,7 +204,7 @@ describe('a journey over the sheet', () => {
     await page.getByRole('combobox', { name: 'Sheet' }).selectOption(tone);
     const axe = createRequire(import.meta.url).resolve('axe-core/axe.min.js');
     await page.addScriptTag({ path: axe });
-    for (const panel of ['Joint', 'Checks', 'Shares', 'Pose map', 'Worst loads', 'Two ways']) {
+    for (const panel of ['Joint', 'Checks', 'Shares', 'Pose map', 'Worst loads', 'Two ways', 'Cases']) {
       await page.getByRole('tab', { name: panel }).click();
       await page.waitForTimeout(300);
       const found = await page.evaluate(async () => {

@@ -1,11 +1,12 @@
 /** Each bearing of a joint and its shaft: what it is, how far it is used, which check governs, and what stays open. */
-import type { Bearing, Joint } from '../../arm/arm.ts';
+import type { Joint } from '../../arm/arm.ts';
 import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
 import { heldOf, standing } from '../figures/utilisationScale.ts';
 import type { ArmOnSheet } from '../store/documentStore.ts';
 import { goToWorst } from '../store/goTo.ts';
 import { governed, useGoverning, usePoseRows } from '../store/governing.ts';
 import { showPanel } from '../store/viewStore.ts';
+import { BearingSelect } from './BearingSelect.tsx';
 
 type Part = 'A' | 'B' | 'ring' | null;
 
@@ -32,9 +33,13 @@ function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; par
   return (
     <li>
       <b>{part === null ? 'Shaft' : part === 'ring' ? 'Ring' : part}</b>
-      <span className="part-size" title={sizeOf(sheet, sheet.arm.joints[at]!, part)}>
-        {sizeOf(sheet, sheet.arm.joints[at]!, part)}
-      </span>
+      {part === null ? (
+        <span className="part-size" title={shaftText(sheet.arm.joints[at]!)}>
+          {shaftText(sheet.arm.joints[at]!)}
+        </span>
+      ) : (
+        <BearingSelect sheet={sheet} at={at} place={part} />
+      )}
       <UtilisationBar held={held} now={now?.utilisation ?? null} />
       <span className={`used ${standing(held)}`}>{utilisationText(held)}</span>
       <span className="why">
@@ -57,18 +62,11 @@ function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; par
   );
 }
 
-function sizeOf({ arm }: ArmOnSheet, { support }: Joint, part: Part): string {
-  if (!support) return '';
-  if (part === null) {
-    const { shaft } = support;
-    if (!shaft) return 'no shaft given';
-    const bore = shaft.bore > 0 ? ` / ${mm(shaft.bore)}` : '';
-    return `⌀ ${mm(shaft.diameter)}${bore} ${shaft.material ?? 'no material'}`;
-  }
-  const key = support.arrangement === 'ring' ? support.bearing : part === 'A' ? support.bearingA : support.bearingB;
-  const bearing: Bearing | undefined = key === null ? undefined : arm.bearings[key];
-  if (!bearing) return 'no bearing named';
-  return `${key}, ${mm(bearing.bore)} × ${mm(bearing.outer)} × ${mm(bearing.width)}`;
+function shaftText({ support }: Joint): string {
+  const shaft = support?.shaft;
+  if (!shaft) return 'no shaft given';
+  const bore = shaft.bore > 0 ? ` / ${mm(shaft.bore)}` : '';
+  return `⌀ ${mm(shaft.diameter)}${bore} ${shaft.material ?? 'no material'}`;
 }
 
 function mm(metres: number): string {

@@ -1,8 +1,13 @@
 /** Why a file was not opened: every mistake with its place, what was found and what was expected. The present arm stays. */
-import { pathText } from '../../arm/issue.ts';
+import { type Issue, pathText } from '../../arm/issue.ts';
 import { dismissRefusal, useDocument } from '../store/documentStore.ts';
 
 const SHOWN = 200;
+
+/** Its path in the file; of a text that has none, such as a table, the column. */
+function placeText({ path, at }: Issue): string {
+  return path.length === 0 && at ? `column ${at.column}` : pathText(path);
+}
 
 export function IssueList() {
   const refusal = useDocument((state) => state.refusal);
@@ -37,7 +42,7 @@ export function IssueList() {
               // biome-ignore lint/suspicious/noArrayIndexKey: the list is replaced as a whole
               <tr key={k}>
                 <td className="number">{issue.at?.line ?? ''}</td>
-                <td className="path">{pathText(issue.path)}</td>
+                <td className="path">{placeText(issue)}</td>
                 <td>{issue.found}</td>
                 <td>{issue.expected}</td>
               </tr>

@@ -1,6 +1,7 @@
 /** The right half of the sheet: one panel at a time, beside the stage that all of them speak to. */
 import { Tab, TabList, TabPanel, Tabs } from 'react-aria-components';
 import { type PanelName, showPanel, useView } from '../store/viewStore.ts';
+import { CasesPanel } from './CasesPanel.tsx';
 import { ChecksPanel } from './ChecksPanel.tsx';
 import { JointPanel } from './JointPanel.tsx';
 import { MapPanel } from './MapPanel.tsx';
@@ -19,6 +20,7 @@ export function Panels() {
         <Tab id="map">Pose map</Tab>
         <Tab id="worst">Worst loads</Tab>
         <Tab id="ways">Two ways</Tab>
+        <Tab id="cases">Cases</Tab>
       </TabList>
       <TabPanel id="joint" className="panel">
         <JointPanel />
@@ -37,6 +39,9 @@ export function Panels() {
       </TabPanel>
       <TabPanel id="ways" className="panel">
         <WaysPanel />
+      </TabPanel>
+      <TabPanel id="cases" className="panel">
+        <CasesPanel />
       </TabPanel>
     </Tabs>
   );

@@ -21,7 +21,7 @@ export function Toolbar() {
         <button
           type="button"
           onClick={() => picker.current?.click()}
-          title="Open an arm file, or drop one on the sheet"
+          title="Open an arm file, or a CSV table of bearings for this arm; or drop one on the sheet"
         >
           Open file…
         </button>
@@ -29,8 +29,8 @@ export function Toolbar() {
           ref={picker}
           className="file-picker"
           type="file"
-          accept=".json,application/json"
-          aria-label="Arm file to open"
+          accept=".json,application/json,.csv,text/csv"
+          aria-label="Arm file or table of bearings to open"
           tabIndex={-1}
           onChange={async (event) => {
             const { files } = event.target;
@@ -50,6 +50,7 @@ export function Toolbar() {
           Redo
         </button>
       </div>
+      <Notice />
       <div className="tool-group end">
         <UnitsChoice />
         <SheetChoiceField />
@@ -59,6 +60,16 @@ export function Toolbar() {
       </div>
       {browsing && <Gallery onClose={() => setBrowsing(false)} open={openText} />}
     </header>
+  );
+}
+
+/** What was last taken in; there from the start, so that a screen reader hears it. */
+function Notice() {
+  const text = useDocument((state) => state.notice);
+  return (
+    <span className="notice" role="status">
+      {text}
+    </span>
   );
 }
 

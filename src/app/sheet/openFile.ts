@@ -1,5 +1,6 @@
-/** A file that was picked or dropped: its text is read here in the browser and goes nowhere else. */
+/** A file that was picked or dropped, an arm or a table of bearings: its text is read here in the browser and goes nowhere else. */
 import { MAX_TEXT_BYTES } from '../../arm/armFile.ts';
+import { openBearingTable } from '../store/bearingTables.ts';
 import { openText, useDocument } from '../store/documentStore.ts';
 
 export async function readDropped(files: FileList | readonly File[]): Promise<void> {
@@ -10,10 +11,16 @@ export async function readDropped(files: FileList | readonly File[]): Promise<vo
     return;
   }
   try {
-    openText(file.name, await file.text());
+    const text = await file.text();
+    if (isTable(file)) openBearingTable(file.name, text);
+    else openText(file.name, text);
   } catch {
     refuse(file.name, 'a file that the browser cannot read', 'an arm file');
   }
+}
+
+function isTable({ name, type }: File): boolean {
+  return /\.csv$/i.test(name) || type === 'text/csv';
 }
 
 function refuse(name: string, found: string, expected: string): void {

@@ -31,6 +31,8 @@ export interface DocumentState {
   /** The last file that could not be opened; the present arm stays. */
   readonly refusal: Refusal | null;
   readonly warnings: readonly Issue[];
+  /** What was last taken in, until the next edit. */
+  readonly notice: string | null;
 }
 
 export const NO_TITLE: TitleFields = { number: '', revision: '', date: '', drawn: '' };
@@ -39,7 +41,15 @@ type Remembered = Pick<DocumentState, 'file' | 'origin' | 'title'>;
 
 export const useDocument = create<DocumentState>()(
   temporal(
-    (): DocumentState => ({ file: null, origin: '', title: NO_TITLE, draft: null, refusal: null, warnings: [] }),
+    (): DocumentState => ({
+      file: null,
+      origin: '',
+      title: NO_TITLE,
+      draft: null,
+      refusal: null,
+      warnings: [],
+      notice: null,
+    }),
     {
       partialize: ({ file, origin, title }): Remembered => ({ file, origin, title }),
       equality: (a, b) => a.file === b.file && a.title === b.title && a.origin === b.origin,
@@ -57,7 +67,7 @@ export function useHistory() {
 export function undo(): void {
   const { pastStates, undo: back } = useDocument.temporal.getState();
   if (!pastStates.at(-1)?.file) return;
-  useDocument.setState({ draft: null });
+  useDocument.setState({ draft: null, notice: null });
   back();
 }
 
@@ -80,6 +90,7 @@ export function openText(name: string, text: string, title: TitleFields = NO_TIT
     draft: null,
     refusal: null,
     warnings: reading.warnings,
+    notice: null,
   });
   return true;
 }
@@ -94,7 +105,7 @@ export function editFile(change: (file: ArmFile) => ArmFile): readonly Issue[] {
   if (!file) return [];
   const reading = readArmValue(change(file));
   if (!reading.ok) return reading.issues;
-  useDocument.setState({ file: reading.file, draft: null, warnings: reading.warnings });
+  useDocument.setState({ file: reading.file, draft: null, warnings: reading.warnings, notice: null });
   return [];
 }
 

@@ -1,5 +1,6 @@
 /** Edits of one joint's support in the arm file, in millimetres as the file has them. */
-import type { ArmFile, JointFile, SupportFile } from '../../arm/armFile.ts';
+import type { ArmFile, BearingFile, JointFile, SupportFile } from '../../arm/armFile.ts';
+import { withBearings } from '../../arm/withBearings.ts';
 
 function withJoint(file: ArmFile, index: number, change: (joint: JointFile) => JointFile): ArmFile {
   return { ...file, joints: file.joints.map((joint, k) => (k === index ? change(joint) : joint)) };
@@ -24,6 +25,29 @@ export function withShaftDiameter(file: ArmFile, index: number, mm: number): Arm
     if (joint.kind !== 'revolute' || !joint.support?.shaft) return joint;
     const shaft = { ...joint.support.shaft, diameter_mm: tidy(mm) };
     return { ...joint, support: { ...joint.support, shaft } };
+  });
+}
+
+/** Another bearing for one place of a joint (null: none named), `entry` put into the table where it is not there yet. */
+export function withBearing(
+  file: ArmFile,
+  index: number,
+  place: 'A' | 'B' | 'ring',
+  name: string | null,
+  entry?: BearingFile,
+): ArmFile {
+  const known = name !== null && entry && !Object.hasOwn(file.bearings ?? {}, name) ? { [name]: entry } : {};
+  return withJoint(withBearings(file, known), index, (joint) => {
+    if (joint.kind !== 'revolute' || !joint.support) return joint;
+    const { support } = joint;
+    if (support.arrangement === 'ring') {
+      const { bearing: _, ...rest } = support;
+      return { ...joint, support: name === null ? rest : { ...rest, bearing: name } };
+    }
+    const end = place === 'B' ? 'B' : 'A';
+    const { [end]: _, ...others } = support.bearings ?? {};
+    const bearings = name === null ? others : { ...support.bearings, [end]: name };
+    return { ...joint, support: { ...support, bearings } };
   });
 }
 

@@ -4,7 +4,7 @@ import type { BearingName } from '../../studies/results.ts';
 import type { UnitSystem } from '../../units/format.ts';
 import { useDocument } from './documentStore.ts';
 
-export type PanelName = 'joint' | 'checks' | 'shares' | 'map' | 'worst' | 'ways';
+export type PanelName = 'joint' | 'checks' | 'shares' | 'map' | 'worst' | 'ways' | 'cases';
 export type SheetChoice = 'system' | 'paper' | 'night';
 
 export interface ViewState {
