@@ -46,7 +46,7 @@ beforeAll(async () => {
   page = open.page;
   await drop('wall.arm.json', TEXT);
   await page.locator(`[value="${FILE.name}"]`).waitFor(PATIENT);
-});
+}, 60_000);
 
 afterAll(async () => {
   expect(open.errors).toEqual([]);
