@@ -33,6 +33,8 @@ export interface WorstRow {
 /** Time that one go at a check should take, ms, and the boxes of its first go: how many a box costs depends on the load. */
 const SLICE_MS = 40;
 const FIRST_BOXES = 16;
+/** Goes that every check has before any has more. */
+const FIRST_GOES = 3;
 /** Poses of a first look at a check, and rounds of its first bound. */
 const FIRST_POSES = 12;
 const FIRST_ROUNDS = 2;
@@ -153,19 +155,20 @@ export class WorstCase {
   }
 
   /**
-   * What comes first, lowest: checks without a bound, then those whose verdict is open, then loads, last those whose verdict is clear; in turn
-   * within each.
+   * What comes first, lowest: the first goes at each check, most of which close there; then those whose verdict is open, then loads, last those
+   * whose verdict is clear; in turn within each.
    */
   private urgency(task: Task): number {
     const { state } = task;
     const limit = this.limits.get(state.check);
-    const rank = !Number.isFinite(state.bound)
-      ? 0
-      : limit === undefined
-        ? 2
-        : state.found <= limit && state.bound > limit
-          ? 1
-          : 3;
+    const rank =
+      task.goes < FIRST_GOES || !Number.isFinite(state.bound)
+        ? 0
+        : limit === undefined
+          ? 2
+          : state.found <= limit && state.bound > limit
+            ? 1
+            : 3;
     return rank * 1e9 + task.goes;
   }
 

@@ -1,5 +1,5 @@
 /**
- * The certified worst as a job for workers, anytime: passes of a falling gap, each over all cases, so that a first answer is there at once and
+ * The certified worst as a job for workers, anytime: passes of a growing time, each over all cases, so that a first answer is there at once and
  * better ones follow; a stop, or the end of the time allowed, keeps the best so far. A pass leaves out what an earlier one closed.
  */
 import type { Arm } from '../arm/arm.ts';
@@ -24,7 +24,7 @@ import { type EarlierWorst, keptRows } from './worstKept.ts';
 /** Plain data. */
 export interface WorstShared {
   readonly arm: Arm;
-  /** Gap of this pass. */
+  /** Gap asked for. */
   readonly gap: number;
   /** Time of the clock (`Date.now`) at which to stop, ms. */
   readonly end: number;
@@ -69,8 +69,8 @@ export const worstJob: JobKind<WorstShared, WorstInput, CaseWorst> = {
   },
 };
 
-/** Gaps of the passes before the one asked for, and the share of the time by which each must end. */
-const PASSES = [{ gap: 0.05, until: 0.3 }] as const;
+/** Share of the time by which each pass must end. What a pass does not close is begun anew by the next: mostly little, and never much. */
+const PASSES = [0.03, 0.3, 1] as const;
 /** Least time of a part, ms: enough for first bounds. */
 const LEAST = 200;
 
@@ -93,19 +93,18 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
   const chain = flattenArm(arm);
   const checks = armChecks(arm, chain);
   const best = new BestRows(chain, checks, options.earlier ?? null);
-  const passes = [...PASSES.filter((pass) => pass.gap > 2 * gap), { gap, until: 1 }];
   let stopped = false;
   const result = () => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end);
-  for (const pass of passes) {
+  for (const share of PASSES) {
     const inputs = allParts(chain).flatMap((part) => best.openPart(part, gap));
     if (inputs.length === 0) break;
-    const until = begin + pass.until * (end - begin);
+    const until = begin + share * (end - begin);
     // What time is left is shared out evenly as parts are handed out.
     const budget = (chunk: number) =>
       Math.max(LEAST, ((until - Date.now()) * options.pool.size) / (inputs.length - chunk));
     const finished = await options.pool.run({
       kind: worstJob,
-      shared: { arm, gap: pass.gap, end },
+      shared: { arm, gap, end },
       chunks: inputs.length,
       input: (chunk) => ({ ...inputs[chunk]!, budget: budget(chunk) }),
       onOutput: (chunk, output) => best.take(inputs[chunk]!, output),
