@@ -37,8 +37,8 @@ export function rowObject(row: CheckRow): Json {
           utilisation: row.utilisation,
           verdict: row.verdict,
           ...(row.reason ? { reason: row.reason } : {}),
-          ...(row.source ? { source: row.source } : {}),
         }),
+    ...(row.source ? { source: row.source } : {}),
   };
 }
 

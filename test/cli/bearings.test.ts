@@ -1,6 +1,8 @@
 /** `--bearings`: the user's own table beside the file's. */
+import { readFileSync } from 'node:fs';
 import { afterAll, describe, expect, it } from 'vitest';
-import { armload, complaints, model, modelFile, scratchFolder } from './armload.ts';
+import { readBearingCsv } from '../../src/capacity/rolling/index.ts';
+import { armload, complaints, model, modelFile, ROOT, scratchFolder } from './armload.ts';
 
 const scratch = scratchFolder();
 afterAll(() => scratch.remove());
@@ -10,6 +12,13 @@ const ROW = 'dg-10-20,deep-groove,20,42,12,9000,2500,own table';
 const OTHER = 'never-named,deep-groove,20,42,12,9000,5000,own table';
 
 describe('armload --bearings', () => {
+  it('reads the example of the README', () => {
+    const [, csv] = /```csv\n([\s\S]*?)```/.exec(readFileSync(`${ROOT}/README.md`, 'utf8'))!;
+    const { bearings, issues } = readBearingCsv(csv!);
+    expect(issues).toEqual([]);
+    expect(Object.keys(bearings)).toEqual(['own-20', 'own-bush']);
+  });
+
   it.each([
     ['pose', ['--at=10,-40']],
     ['sweep', ['--samples', '2', '--case', 'hold the grinder']],
