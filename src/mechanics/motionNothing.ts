@@ -7,7 +7,7 @@
  */
 import type { Chain, ChainCase } from './chain.ts';
 import type { CheckForm } from './form.ts';
-import { looseBound, newReducedForm, PART, reduceForm } from './freeLoadsForm.ts';
+import { LIN, looseBound, newReducedForm, PART, reduceForm } from './freeLoadsForm.ts';
 import { newPoseLoad, pairCount, poseLoad, poseLoadScratch } from './freeLoadsPose.ts';
 
 const POINTS = 5;
@@ -34,7 +34,9 @@ export function nothingBound(chain: Chain, load: ChainCase, check: CheckForm, le
     poseLoad(chain, load, pose, at, scratch);
     for (const f of check.forms) {
       reduceForm(reduced, f, check.joint, load, at, 0, 0);
-      const value = looseBound(reduced);
+      // by its size: a linear part below nothing at every pose may rise above it between them
+      const linear = reduced.fixed[LIN]!;
+      const value = looseBound(reduced) - linear + Math.abs(linear);
       if (!(value <= least)) return Number.POSITIVE_INFINITY;
       if (value > largest) largest = value;
     }
