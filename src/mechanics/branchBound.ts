@@ -14,6 +14,7 @@ import { shrinkBox } from './branchBoundShrink.ts';
 import type { Chain, ChainCase } from './chain.ts';
 import { type CheckForm, type Form, form } from './form.ts';
 import { type FreePart, freePart, newFreeWorst } from './freeLoads.ts';
+import { nothingBound } from './motionNothing.ts';
 import { COARSE_CELLS, TOP_LEVEL } from './outwardSets.ts';
 import { Polish } from './polish.ts';
 import { allRound, FAR, sameAllRound } from './roundForms.ts';
@@ -49,6 +50,8 @@ interface Piece {
 const TORQUE = form({ P: [[0, 0, 0, 0, 0, 1]] });
 /** What lies below this share of the ceiling counts as nothing. */
 const NOTHING = 1e-9;
+/** A check that stays below this share of the ceiling at evenly spread poses is looked at as nothing. */
+const SMALL = 1e-13;
 const FEW = 1 << 21;
 /** Share of the gap that forms all round may lie above what is attained. */
 const NEAR = 0.6;
@@ -116,7 +119,11 @@ export class BranchBound {
     this.high = new Float64Array(n + 2);
     this.keptLow = new Float64Array(n + 2);
     this.keptHigh = new Float64Array(n + 2);
-    this.firstBoxes();
+    // Boxes would narrow on a check that is nothing everywhere, such as tilting of a linkage in a plane, without end
+    const nothing =
+      this.found <= NOTHING * this.ceiling ? nothingBound(chain, load, check, SMALL * this.ceiling) : Number.NaN;
+    if (nothing <= NOTHING * this.ceiling) this.closed = nothing;
+    else this.firstBoxes();
   }
 
   get bound(): number {
