@@ -27,6 +27,8 @@ export interface Climber {
 
 /** 4096 cells an edge: for the few paths along a crease, where a level only halves the gap. */
 const LAST_LEVEL = 9;
+/** Level of the tables that a pose is first read from. */
+const COARSE_PATH = 2;
 const SAMPLES = 300;
 const SAMPLE_SEED = 20261;
 
@@ -187,9 +189,12 @@ export class GravitySearch {
         const enough = Math.max(entry.found * (1 + 1e-6), wanted * (1 - overshoot(level, search.stepCount)));
         const b = search.best(level, wanted, enough);
         if (!(b >= one.bound)) one.bound = b;
-        const pose = new Float64Array(this.chain.n);
-        search.follow(pose, Math.min(level, 2), entry.found);
-        this.offer(entry, pose);
+        // The path through coarse tables is found at once; where that leaves a gap, the one through the tables of this level may lead higher.
+        for (const by of level > COARSE_PATH ? [COARSE_PATH, level] : [level]) {
+          const pose = new Float64Array(this.chain.n);
+          search.follow(pose, by, entry.found);
+          this.offer(entry, pose);
+        }
       }
       if (!(one.bound <= bound)) bound = one.bound;
     }
