@@ -33,8 +33,9 @@ function armChanged(fresh: boolean): void {
 }
 
 function goToTrouble(): void {
-  const { searched: rows } = useWorst.getState();
-  if (!rows || !untouched || poseStore.getState().pose !== untouched) return;
+  const { searched: rows, of } = useWorst.getState();
+  // What is still that of an arm before it leads nowhere here.
+  if (!rows || of !== presentArm()?.file || !untouched || poseStore.getState().pose !== untouched) return;
   untouched = null;
   const row = hardestRow(rows);
   if (row) goToWorst(row, false);

@@ -6,7 +6,11 @@ import { armload, type OpenPage, openPage } from './browserPage.ts';
 
 const MODEL = 'models/wall-arm.arm.json';
 const TEXT = readFileSync(MODEL, 'utf8');
-const FILE = JSON.parse(TEXT) as { name: string; cases: { name: string }[] };
+const FILE = JSON.parse(TEXT) as {
+  name: string;
+  joints: { name: string; travel_deg: [number, number] }[];
+  cases: { name: string }[];
+};
 
 interface Row {
   bearing: string | null;
@@ -54,6 +58,18 @@ afterAll(async () => {
 });
 
 describe('what lasts, on the sheet', () => {
+  test('an arm opened over another stands in a pose and under a case of its own, whatever comes late of the other', async () => {
+    await page.getByText('being worked out').first().waitFor({ state: 'detached', timeout: 60_000 });
+    const shown = await page.getByRole('combobox', { name: 'Case on stage' }).inputValue();
+    expect(FILE.cases.map(({ name }) => name)).toContain(shown);
+    await expect(page.locator('.title-block').textContent()).resolves.toContain(shown);
+    for (const { name, travel_deg } of FILE.joints) {
+      const angle = Number(await page.getByRole('spinbutton', { name: `Angle of ${name}` }).inputValue());
+      expect(angle).toBeGreaterThanOrEqual(travel_deg[0]);
+      expect(angle).toBeLessThanOrEqual(travel_deg[1]);
+    }
+  });
+
   test('life, wear, fatigue and tip error stand in Checks with the verdicts of the command line', async () => {
     const json = armload('sweep', MODEL, '--samples', '2') as SweepJson;
     await panel('Checks');

@@ -56,7 +56,14 @@ export function CasesPanel() {
         <ul className="case-list" aria-label="Load cases">
           {sheet.arm.cases.map((one) => (
             <li key={one.name}>
-              <button type="button" aria-pressed={one.name === name} onClick={() => showCase(one.name)}>
+              <button
+                type="button"
+                aria-pressed={one.name === name}
+                onClick={() => {
+                  setFault(null);
+                  showCase(one.name);
+                }}
+              >
                 {one.name}
               </button>
             </li>

@@ -67,7 +67,7 @@ export function Toolbar() {
 function Notice() {
   const text = useDocument((state) => state.notice);
   return (
-    <span className="notice" role="status">
+    <span className="notice" role="status" title={text ?? undefined}>
       {text}
     </span>
   );

@@ -3,10 +3,11 @@
  * over poses covers.
  */
 import { create } from 'zustand';
+import type { ArmFile } from '../../arm/armFile.ts';
 import { byJoint, rowsWithVerdict } from '../../studies/assess.ts';
 import type { CheckRow } from '../../studies/results.ts';
 import type { WorstResult } from '../../studies/worstArm.ts';
-import { type ArmOnSheet, armOf, presentArm } from './documentStore.ts';
+import { type ArmOnSheet, armOf, presentArm, useDocument } from './documentStore.ts';
 import { capacityOf } from './engine.ts';
 import { lastingOf, useLasting } from './lastingStore.ts';
 import { useProof } from './proofStore.ts';
@@ -18,9 +19,13 @@ export interface WorstState {
   readonly rows: readonly CheckRow[] | undefined;
   /** Those of sweep and proof alone: each has a load at a pose. */
   readonly searched: readonly CheckRow[] | undefined;
+  /** The file they speak of. */
+  readonly of: ArmFile | null;
 }
 
-export const useWorst = create<WorstState>(() => ({ rows: undefined, searched: undefined }));
+const NOTHING: WorstState = { rows: undefined, searched: undefined, of: null };
+
+export const useWorst = create<WorstState>(() => NOTHING);
 
 function key(row: CheckRow): string {
   return `${row.jointIndex} ${row.bearing} ${row.check}`;
@@ -76,7 +81,14 @@ function proofRows(proof: WorstResult, name: string | null): readonly CheckRow[]
   return name === null ? proof.rows : proof.eachCase.filter((row) => row.case === name);
 }
 
-/** Keeps the rows in step with the sweep and the proof. */
+/** Whether what was worked out for one file can stand on the sheet of another: an edit of the same arm, not an arm of other joints. */
+function sameJoints(of: ArmFile, present: ArmFile): boolean {
+  const { names } = armOf(of).chain;
+  const now = armOf(present).chain.names;
+  return names.length === now.length && names.every((name, k) => name === now[k]);
+}
+
+/** Keeps the rows in step with the sweep, the proof and what lasts. */
 export function followWorst(): void {
   const update = () => {
     const sweep = useSweep.getState();
@@ -84,21 +96,31 @@ export function followWorst(): void {
     // The newer of two arms: while one is being dragged a sweep is ahead of the proof, after an edit the proof may be there first.
     const present = presentArm()?.file;
     const of = proof.best && proof.of === present && sweep.of !== present ? proof.of : sweep.of;
-    if (!of) {
-      useWorst.setState({ rows: undefined, searched: undefined });
+    if (!of || !present || !sameJoints(of, present)) {
+      useWorst.setState(NOTHING);
       return;
     }
     const swept = sweep.of === of ? sweep.result : null;
     const proven = proof.best && proof.of === of ? proofRows(proof.best, swept ? sweep.ofCase : sweep.case) : [];
     const waiting = swept ? casesWaiting(armOf(of), sweep) : [];
     const searched = worstRows(armOf(of), swept, proven, proof.gap, waiting);
-    useWorst.setState({ searched, rows: byJoint([...searched, ...lastingOf(of, useLasting.getState())]) });
+    useWorst.setState({ of, searched, rows: withLasting(of, searched) });
   };
   useSweep.subscribe((state, before) => {
     if (state.result !== before.result) update();
   });
-  useLasting.subscribe(update);
   useProof.subscribe((state, before) => {
     if (state.best !== before.best) update();
   });
+  useLasting.subscribe(() => {
+    const { of, searched } = useWorst.getState();
+    if (of && searched) useWorst.setState({ rows: withLasting(of, searched) });
+  });
+  useDocument.subscribe((state, before) => {
+    if (state.file !== before.file) update();
+  });
+}
+
+function withLasting(of: ArmFile, searched: readonly CheckRow[]): readonly CheckRow[] {
+  return byJoint([...searched, ...lastingOf(of, useLasting.getState())]);
 }
