@@ -13,6 +13,8 @@ export function tipForceAt(pose: readonly number[], name: string): Triple | null
 }
 
 export function goToWorst(row: CheckRow, play = true): void {
+  // Some rows speak of the whole duty and stand at no pose.
+  if (row.pose.length === 0) return;
   gone = row;
   if (row.jointIndex >= 0) selectJoint(row.jointIndex, row.bearing);
   showCase(row.case);
