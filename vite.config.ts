@@ -39,7 +39,7 @@ export default defineConfig({
         target: 'node20',
         copyPublicDir: false,
         rollupOptions: {
-          input: { cli: 'src/cli/main.ts', nodeWorker: 'src/worker/nodeWorker.ts', bench: 'test/bench/main.ts' },
+          input: { cli: 'src/cli/start.ts', nodeWorker: 'src/worker/nodeWorker.ts', bench: 'test/bench/main.ts' },
           external: [/^mujoco-js/],
           output: { format: 'cjs', entryFileNames: '[name].js', chunkFileNames: '[name]-[hash].js' },
         },

@@ -1,4 +1,3 @@
-#!/usr/bin/env node
 /** The command line. Verbs load on demand, so that each starts as fast as what it needs. */
 import { Command, CommanderError, Option, type OptionValues } from 'commander';
 import { version } from '../../package.json';
