@@ -42,6 +42,13 @@ function workOut(file: ArmFile): void {
   );
 }
 
+/** Whether the parts of a file are known or on their way; an undo may come back to one whose work was stopped half way. */
+function inHand(file: ArmFile): boolean {
+  const { of, parts, trouble } = useLasting.getState();
+  if (of !== file) return false;
+  return run !== null || trouble !== null || LASTING_PARTS.every((part) => parts[part] !== undefined);
+}
+
 /** Follows every edit that stays; what is being dragged is not kept up with. */
 export function lastingAfterEdits(): void {
   let wait: ReturnType<typeof setTimeout> | undefined;
@@ -49,7 +56,7 @@ export function lastingAfterEdits(): void {
     if (state.file === before.file && state.draft === before.draft) return;
     clearTimeout(wait);
     const { file, draft } = state;
-    if (!file || draft || useLasting.getState().of === file) return;
+    if (!file || draft || inHand(file)) return;
     turn++;
     run?.stop();
     run = null;
