@@ -91,6 +91,12 @@ export class DirectionValue implements DirectionFunction {
     return out;
   }
 
+  /** Pose outboard that the push wants along the e of the last value. */
+  followPush(pose: Float64Array, level: number): void {
+    const { e } = this.over;
+    this.push?.follow(e[0]!, e[1]!, pose, level);
+  }
+
   unit(e0: number, e1: number, e2: number, level: number): number {
     return this.mix(e0, e1, e2, 1, level);
   }

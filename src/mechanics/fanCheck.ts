@@ -15,7 +15,7 @@ import type { RoundForm } from './roundForms.ts';
 import { TipPush } from './tipPush.ts';
 
 /** What a search needs of a form's bounds; see GravityCheck. */
-export type SphereCheck = Pick<GravityCheck, 'ceiling' | 'stepCount' | 'best' | 'follow'>;
+export type SphereCheck = Pick<GravityCheck, 'ceiling' | 'stepCount' | 'best' | 'follow' | 'apart'>;
 
 interface Rib {
   readonly angle: number;
@@ -86,8 +86,15 @@ export class FanCheck implements SphereCheck {
   }
 
   follow(pose: Float64Array, level: number, enough: number): void {
-    const best = this.ribs.reduce((most, rib) => (rib.level >= 0 && rib.bound > most.bound ? rib : most), this.first());
-    best.check.follow(pose, level, enough);
+    this.highest().check.follow(pose, level, enough);
+  }
+
+  apart(weights: Float64Array, push: Float64Array, level: number, enough: number): void {
+    this.highest().check.apart(weights, push, level, enough);
+  }
+
+  private highest(): Rib {
+    return this.ribs.reduce((most, rib) => (rib.level >= 0 && rib.bound > most.bound ? rib : most), this.first());
   }
 
   private first(): Rib {

@@ -73,6 +73,17 @@ export class FreeDirection {
     return across > 0 ? Math.sqrt(along * along + across * across) : Math.abs(along);
   }
 
+  /** Direction in which the outboard first moment counts where `most` is met. [3] */
+  direction(e0: number, e1: number, e2: number, el: number, level: number): Float64Array {
+    this.lever = 0;
+    this.most(e0, e1, e2, el, level);
+    const { t1, t2 } = this;
+    const [c, s] = [Math.cos(this.arc.arg), Math.sin(this.arc.arg)];
+    const out = Float64Array.from(t1, (v, k) => s * v - c * t2[k]!);
+    if (this.lever === 0) out.set([0, 0, 1]);
+    return out;
+  }
+
   at(t: number, level: number): number {
     const c = Math.cos(t);
     const s = Math.sin(t);

@@ -14,6 +14,7 @@ import { FanCheck, type SphereCheck } from './fanCheck.ts';
 import { GravityCheck } from './gravityCheck.ts';
 import { type CheckState, gapOf, overshoot, ROUNDING } from './gravitySearch.ts';
 import type { GravityMass, OutwardSets } from './outwardSets.ts';
+import { PoseSplit } from './poseSplit.ts';
 import { FAR, leaned, type RoundForm, roundForms, sameAllRound, upright } from './roundForms.ts';
 import { TipPush } from './tipPush.ts';
 
@@ -32,9 +33,11 @@ export class FreeForceSearch {
   private readonly state: CheckState;
   private level = -1;
   private stalled = false;
+  private tree: PoseSplit | null = null;
+  private readonly startSplitting: () => PoseSplit;
 
   /** `state` of a check: its bound is lowered here. Torque ranges of its forms are left out. `weights`, `tip`: outward sets of the links and of the tip alone. */
-  constructor(chain: Chain, state: CheckState, weights: OutwardSets, tip: OutwardSets) {
+  constructor(chain: Chain, load: ChainCase, state: CheckState, weights: OutwardSets, tip: OutwardSets) {
     const { forms, joint } = state.check;
     const g = Math.hypot(...chain.gravity);
     const down = g > 0 ? chain.gravity.map((v) => v / g) : [0, 0, -1];
@@ -44,29 +47,55 @@ export class FreeForceSearch {
     const inLink = round !== null;
     const used = round ?? forms.map(upright);
     this.raised = Math.max(0, ...used.map(({ form: f, leanO }) => Math.hypot(...f.c) + Math.abs(leanO) - f.o));
-    const search = ({ form: f, lean, leanO }: RoundForm): SphereCheck => {
-      if (f.rows === 3) return new FanCheck(weights, joint, f, g, down, inLink, tip, { lean, leanO });
+    const make = ({ form: f, lean, leanO }: RoundForm, heavy: OutwardSets, pushed: OutwardSets): SphereCheck => {
+      if (f.rows === 3) return new FanCheck(heavy, joint, f, g, down, inLink, pushed, { lean, leanO });
       const plain = leaned({ form: f, lean, leanO });
-      return new GravityCheck(weights, joint, plain, g, down, inLink, new TipPush(tip, joint, plain, inLink));
+      return new GravityCheck(heavy, joint, plain, g, down, inLink, new TipPush(pushed, joint, plain, inLink));
     };
-    this.parts = used.map((one) => ({
-      search: search({ ...one, form: { ...one.form, o: one.form.o + this.raised } }),
-      bound: Number.POSITIVE_INFINITY,
-    }));
+    const raised = used.map((one) => ({ ...one, form: { ...one.form, o: one.form.o + this.raised } }));
+    this.parts = raised.map((one) => ({ search: make(one, weights, tip), bound: Number.POSITIVE_INFINITY }));
+    this.startSplitting = () =>
+      new PoseSplit(
+        { chain, weights, tip, masses: load, tipMass: tipMass(chain, load), first: inLink ? joint + 1 : joint },
+        this.parts.map(({ bound }, k) => ({ bound, make: (h, p) => make(raised[k]!, h, p) })),
+      );
     this.last = forms.some((f) => f.rows === 3) ? LAST_LEVEL_OF_THREE : LAST_LEVEL;
     state.ceiling = Math.max(0, ...this.parts.map(({ search }) => search.ceiling));
     this.stalled = !Number.isFinite(state.ceiling);
   }
 
+  /** Whether finer tables can help. */
   open(gap: number): boolean {
     return !this.stalled && this.level < this.last && gapOf(this.state) > gap;
+  }
+
+  /** Whether splitting can help. */
+  canSplit(gap: number): boolean {
+    return Number.isFinite(this.state.ceiling) && gapOf(this.state) > gap && !this.tree?.spent;
+  }
+
+  /** A slice of splitting, for a gap of `gap`. */
+  split(gap: number): void {
+    const wanted = this.wanted(gap);
+    this.tree ??= this.startSplitting();
+    this.lower(this.tree.slice(wanted));
+  }
+
+  private wanted(gap: number): number {
+    const { found } = this.state;
+    return this.raised + (found > 0 ? found / (1 - 0.95 * gap) : 0);
+  }
+
+  private lower(most: number): void {
+    const { state } = this;
+    state.bound = Math.min(state.bound, most - this.raised + ROUNDING * state.ceiling);
   }
 
   /** One level finer, for a gap of `gap`. */
   round(gap: number): void {
     this.level++;
     const { state, level } = this;
-    const wanted = this.raised + (state.found > 0 ? state.found / (1 - 0.95 * gap) : 0);
+    const wanted = this.wanted(gap);
     let most = Number.NEGATIVE_INFINITY;
     for (const part of this.parts) {
       // A form that stays below what is attained, or allowed by the gap, needs no finer look.
@@ -78,10 +107,9 @@ export class FreeForceSearch {
       }
       if (!(part.bound <= most)) most = part.bound;
     }
-    const bound = most - this.raised + ROUNDING * state.ceiling;
     // Level 1 is where the tables begin to speak; a bound that stands still from there on is the pose's fault.
-    this.stalled = level > 1 && !(bound < state.bound * (1 - WORTH));
-    state.bound = Math.min(state.bound, bound);
+    this.stalled = level > 1 && !(most - this.raised < state.bound * (1 - WORTH));
+    this.lower(most);
   }
 }
 

@@ -13,13 +13,13 @@ import { DirectionValue } from './directionValue.ts';
 import type { Form } from './form.ts';
 import {
   type DirectionFunction,
+  followOutward,
   InwardStep,
   intoNext,
   PolarTabled,
   parallelRuns,
   type Roof,
   Tabled,
-  turnBack,
 } from './inwardSteps.ts';
 import type { OutwardSets } from './outwardSets.ts';
 import type { TipPush } from './tipPush.ts';
@@ -116,17 +116,16 @@ export class GravityCheck {
 
   /** Pose at which the tables of this level see their maximum; `pose` [n] is filled. */
   follow(pose: Float64Array, level: number, enough: number): void {
-    const { chain } = this.sets;
     const u = Float64Array.from(this.u0);
     for (const step of this.steps) step.carryBest(u, pose, level, enough);
     const d = this.value.direction(u[0]!, u[1]!, u[2]!, level, enough);
-    const first = this.inLink ? this.joint + 1 : this.joint;
-    if (this.inLink && first < chain.n) intoNext(d, d, chain.rotation, first);
-    for (let k = first; k < chain.n; k++) {
-      const q = this.sets.argument(k, d[0]!, d[1]!, d[2]!, level);
-      pose[k] = q;
-      turnBack(d, q);
-      if (k + 1 < chain.n) intoNext(d, d, chain.rotation, k + 1);
-    }
+    followOutward(this.sets, this.joint, this.inLink, d, pose, level);
+  }
+
+  /** Poses outboard that weights and push each want where the check is worst, as of `follow`; both [n] are filled. */
+  apart(weights: Float64Array, push: Float64Array, level: number, enough: number): void {
+    this.follow(weights, level, enough);
+    push.set(weights);
+    this.value.followPush(push, level);
   }
 }

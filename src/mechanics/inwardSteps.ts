@@ -22,6 +22,26 @@ export function intoNext(out: Float64Array, v: ArrayLike<number>, r: Float64Arra
   for (let j = 0; j < 3; j++) out[j] = r[at + j]! * x + r[at + 3 + j]! * y + r[at + 6 + j]! * z;
 }
 
+/** Angles of the joints outboard that reach farthest along d (housing frame of a joint, or its link frame), into `pose`; d is used up. */
+export function followOutward(
+  sets: OutwardSets,
+  joint: number,
+  inLink: boolean,
+  d: Float64Array,
+  pose: Float64Array,
+  level: number,
+): void {
+  const { n, rotation } = sets.chain;
+  const first = inLink ? joint + 1 : joint;
+  if (inLink && first < n) intoNext(d, d, rotation, first);
+  for (let k = first; k < n; k++) {
+    const q = sets.argument(k, d[0]!, d[1]!, d[2]!, level);
+    pose[k] = q;
+    turnBack(d, q);
+    if (k + 1 < n) intoNext(d, d, rotation, k + 1);
+  }
+}
+
 /**
  * Neighbouring joints with parallel axes turn gravity by the sum of their angles alone, so they are one step whose travel is
  * the sum of theirs. R leads from the first one's canonical frame (all angles 0) to the housing frame after the last.

@@ -33,6 +33,8 @@ export interface WorstRow {
 /** Time that one go at a check should take, ms, and the boxes of its first go: how many a box costs depends on the load. */
 const SLICE_MS = 40;
 const FIRST_BOXES = 16;
+/** Boxes after which splitting takes turns with them. */
+const PATIENCE = 50_000;
 /** Goes that every check has before any has more. */
 const FIRST_GOES = 3;
 /** Poses of a first look at a check, and rounds of its first bound. */
@@ -97,7 +99,7 @@ export class WorstCase {
       const state = entries.get(check) ?? blank(chain, check);
       return {
         state,
-        spheres: sets ? new FreeForceSearch(chain, state, sets.weights, sets.tip) : null,
+        spheres: sets ? new FreeForceSearch(chain, load, state, sets.weights, sets.tip) : null,
         branch: null,
         goes: 0,
         boxes: FIRST_BOXES,
@@ -193,6 +195,10 @@ export class WorstCase {
     }
     if (task.spheres?.open(gap)) {
       task.spheres.round(gap);
+      return;
+    }
+    if (task.goes % 2 === 0 && task.spheres?.canSplit(gap) && task.branch.boxes > PATIENCE) {
+      task.spheres.split(gap);
       return;
     }
     const begin = performance.now();

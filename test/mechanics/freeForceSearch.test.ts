@@ -80,7 +80,7 @@ describe('weights and a tip force that may point anywhere, each by its own outwa
         const sets = [new OutwardSets(chain, load), new OutwardSets(chain, tipMass(chain, load))] as const;
         for (const check of checksOf(arm, chain, seed)) {
           const state = stateOf(chain, check);
-          const search = new FreeForceSearch(chain, state, ...sets);
+          const search = new FreeForceSearch(chain, load, state, ...sets);
           for (let round = 0; round < 2 && search.open(0.005); round++) search.round(0.005);
           for (const value of sampled(chain, load, check, seed, 60)) {
             compared++;
@@ -102,7 +102,7 @@ describe('weights and a tip force that may point anywhere, each by its own outwa
       const check = loadChecks(arm, chain).find((c) => c.joint === chain.n - 1 && c.check === 'moment')!;
       const state = stateOf(chain, check);
       for (const value of sampled(chain, load, check, seed, 40)) state.found = Math.max(state.found, value);
-      const search = new FreeForceSearch(chain, state, ...sets);
+      const search = new FreeForceSearch(chain, load, state, ...sets);
       while (search.open(0.01)) search.round(0.01);
       expect(state.bound).toBeGreaterThanOrEqual(state.found);
       expect(state.bound).toBeLessThanOrEqual(1.1 * state.found);
@@ -175,6 +175,63 @@ describe('weights and a tip force that may point anywhere, each by its own outwa
     expect(broken.none).toBe(12);
     expect(broken.small).toBeGreaterThan(3);
     expect(broken.round).toBeGreaterThan(3);
+  });
+
+  it('splits travel where weights and force want different poses: bounds hold, and come down (3–5 joints, seeds 1–9)', () => {
+    let lowered = 0;
+    let stood = 0;
+    for (let seed = 1; seed <= 9; seed++) {
+      const arm = randomArm(seed, {
+        joints: 3 + (seed % 3),
+        force: 'any',
+        drives: seed % 4 === 0,
+        full: seed % 2 ? 0.5 : 0,
+      });
+      const chain = flattenArm(arm);
+      const load = chain.cases[0]!;
+      const sets = [new OutwardSets(chain, load), new OutwardSets(chain, tipMass(chain, load))] as const;
+      for (const check of checksOf(arm, chain, seed).filter((_, k) => (k + seed) % 2 === 0)) {
+        const state = stateOf(chain, check);
+        const values = [...sampled(chain, load, check, seed, 120)];
+        state.found = Math.max(0, ...values);
+        const search = new FreeForceSearch(chain, load, state, ...sets);
+        while (search.open(1e-4)) search.round(1e-4);
+        const before = state.bound;
+        for (let k = 0; k < 4 && search.canSplit(1e-4); k++) search.split(1e-4);
+        if (state.bound < before * (1 - 1e-3)) lowered++;
+        else stood++;
+        expect(state.bound).toBeGreaterThanOrEqual(state.found - 1e-9 * state.ceiling);
+      }
+    }
+    expect(stood).toBeGreaterThan(0);
+    expect(lowered).toBeGreaterThan(3);
+  });
+
+  it('would be caught leaving out one half of a split (two joints, seeds 1–10)', () => {
+    let low = 0;
+    for (let seed = 1; seed <= 10; seed++) {
+      const whole = flattenArm(randomArm(seed, { joints: 2, force: 'any', full: 0 }));
+      const load = whole.cases[0]!;
+      const middle = 0.5 * (whole.from[1]! + whole.to[1]!);
+      const halves = [
+        { ...whole, to: whole.to.with(1, middle) },
+        { ...whole, from: whole.from.with(1, middle) },
+      ];
+      const f = form({ P: [[1, 0, 0, 0, 5, 0], [0, 1, 0, -5, 0, 0]] }); // biome-ignore format: rows
+      const check: CheckForm = { check: 'one', joint: 0, bearing: null, unit: 'N', forms: [f] };
+      const worst = Math.max(...sampled(whole, load, check, seed, 200));
+      const bounds = halves.map((half) => {
+        const state = stateOf(half, check);
+        state.found = 0.5 * worst;
+        const sets = [new OutwardSets(half, load), new OutwardSets(half, tipMass(half, load))] as const;
+        const search = new FreeForceSearch(half, load, state, ...sets);
+        while (search.open(1e-3)) search.round(1e-3);
+        return state.bound;
+      });
+      expect(Math.max(...bounds)).toBeGreaterThanOrEqual(worst * (1 - 1e-12));
+      if (Math.min(...bounds) < worst) low++;
+    }
+    expect(low).toBeGreaterThan(2);
   });
 
   it('refuses a push along e of three components', () => {
