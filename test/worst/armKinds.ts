@@ -96,6 +96,16 @@ export function withForceAlong(arm: Arm, seed: number): Arm {
   return withCases(arm, (load) => ({ ...load, tipForce }));
 }
 
+/** Every other joint on a ring bearing, which takes force and moment alike. */
+function onRings(arm: Arm): Arm {
+  return withJoints(arm, (joint, k) => {
+    const { support } = joint;
+    if (k % 2 === 1 || !support || support.arrangement === 'ring') return joint;
+    const { hub, stationA: station, shaft } = support;
+    return { ...joint, support: { arrangement: 'ring', hub, station, bearing: null, shaft } };
+  });
+}
+
 function massless(arm: Arm, from: number): Arm {
   return withJoints(
     withCases(arm, (load) => ({ ...load, payload: null })),
@@ -182,6 +192,10 @@ export const OTHER_KINDS: readonly ArmKind[] = [
   kind('motion, gravity along the first axis', { motion: true }, alongFirst),
   short('force any way, bearings, shafts and gears', { force: 'any', drives: true }),
   kind('force any way, massless', { force: 'any' }, (arm) => massless(arm, 0)),
+  kind('motion, one degree of travel', { motion: true, travel: Math.PI / 180, full: 0 }, same),
+  kind('motion, parallel axes, coincident origins', { motion: true, parallel: 0.8, coincident: 0.5 }, same),
+  kind('force in the base, rings', { force: 'base', drives: true }, onRings),
+  kind('force any way, rings and motion', { force: 'any', motion: true }, onRings),
 ];
 
 /** Several cases on one arm: weights, a force any way, a force along gravity, each with its own factor. */
