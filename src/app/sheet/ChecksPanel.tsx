@@ -11,6 +11,7 @@ import { goToWorst } from '../store/goTo.ts';
 import { usePoseRows, useTipMade } from '../store/governing.ts';
 import { useView } from '../store/viewStore.ts';
 import { useWorst } from '../store/worstStore.ts';
+import { FileWords } from './FileWords.tsx';
 import { quantityOf, shownNumber } from './shownNumber.ts';
 
 export function ChecksPanel() {
@@ -119,8 +120,16 @@ function CheckLine({ row, now }: { row: CheckRow; now: CheckRow | undefined }) {
           )}
           {now && row.check === 'tip error' && <TipShares />}
           {/* That a pass speaks for its grid or pose alone stands in the line of the sweep. */}
-          {row.reason && (row.verdict !== 'pass' || isLasting(row)) && <span className="reason">{row.reason}</span>}
-          {row.source && <span className="source">{row.source}</span>}
+          {row.reason && (row.verdict !== 'pass' || isLasting(row)) && (
+            <span className="reason">
+              <FileWords text={row.reason} />
+            </span>
+          )}
+          {row.source && (
+            <span className="source">
+              <FileWords text={row.source} />
+            </span>
+          )}
         </td>
       </tr>
     </>

@@ -7,6 +7,7 @@ import { goToWorst } from '../store/goTo.ts';
 import { governed, useGoverning, usePoseRows } from '../store/governing.ts';
 import { showPanel } from '../store/viewStore.ts';
 import { BearingSelect } from './BearingSelect.tsx';
+import { FileWords } from './FileWords.tsx';
 
 type Part = 'A' | 'B' | 'ring' | null;
 
@@ -45,10 +46,10 @@ function GoverningLine({ sheet, at, part }: { sheet: ArmOnSheet; at: number; par
       <span className="why">
         {row ? (
           <button type="button" className="go" onClick={() => goToWorst(row)}>
-            {worst.why}
+            <FileWords text={worst.why} />
           </button>
         ) : (
-          (worst?.why ?? 'not swept yet')
+          <FileWords text={worst?.why ?? 'not swept yet'} />
         )}
       </span>
       {open.length > 0 ? (

@@ -165,5 +165,5 @@ function BearingLine({ joint, index, name, row }: BearingLineProps) {
 
 function openText(worst: Governing | undefined): string {
   if (!worst || worst.open.length === 0) return '';
-  return `; not assessed: ${worst.open.map(({ check, reason }) => `${check} (${reason})`).join(', ')}`;
+  return `; not assessed: ${worst.open.map(({ check, reason }) => `${check} (${reason.replaceAll('`', '')})`).join(', ')}`;
 }

@@ -8,6 +8,7 @@ import { type ArmOnSheet, editFile } from '../store/documentStore.ts';
 import { useView } from '../store/viewStore.ts';
 import { refusalOf, tidied } from './caseField.ts';
 import { EntryField } from './EntryField.tsx';
+import { FileWords } from './FileWords.tsx';
 import { shownNumber } from './shownNumber.ts';
 
 interface Entry {
@@ -93,7 +94,9 @@ function TargetField({ entry, given, list }: { entry: Entry; given: number | und
         }
       />
       {!target.given && (
-        <span className="aside">{target.value === null ? target.source : `default: ${target.source}`}</span>
+        <span className="aside">
+          <FileWords text={target.value === null ? target.source : `default: ${target.source}`} />
+        </span>
       )}
     </li>
   );
