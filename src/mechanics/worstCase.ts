@@ -13,6 +13,7 @@ import { type FreePart, freePart, worstAtPose } from './freeLoads.ts';
 import { GravityClimb } from './gravityClimb.ts';
 import { gravityLoad } from './gravityLoad.ts';
 import { type CheckState, GravitySearch, gapOf, isHomogeneous, ROUNDING, raiseByRounding } from './gravitySearch.ts';
+import { factorBetween, UNLIKE } from './likeChecks.ts';
 import { MotionSearch } from './motionSearch.ts';
 import { OutwardSets } from './outwardSets.ts';
 import { polish } from './polish.ts';
@@ -48,6 +49,8 @@ export type Limits = ReadonlyMap<CheckForm, number>;
 interface Task {
   readonly state: CheckState;
   readonly spheres: FreeForceSearch | null;
+  /** Task of a check that this one is a factor times: it waits for that. */
+  leader: { readonly task: Task; readonly factor: number } | null;
   branch: BranchBound | MotionSearch | null;
   /** Times it has been worked on. */
   goes: number;
@@ -100,6 +103,7 @@ export class WorstCase {
       return {
         state,
         spheres: sets ? new FreeForceSearch(chain, load, state, sets.weights, sets.tip) : null,
+        leader: null,
         branch: null,
         goes: 0,
         boxes: FIRST_BOXES,
@@ -109,12 +113,37 @@ export class WorstCase {
       };
     });
     this.states = this.tasks.map((task) => task.state);
+    this.tasks.forEach((task, k) => {
+      if (entries.has(task.state.check) || task.goes > 0) return;
+      task.leader = this.leaderOf(task, this.tasks.slice(0, k));
+    });
+  }
+
+  private leaderOf({ state }: Task, earlier: readonly Task[]): Task['leader'] {
+    for (const task of earlier) {
+      const factor = task.leader ? null : factorBetween(state.check, task.state.check);
+      if (factor !== null) return { task, factor };
+    }
+    return null;
+  }
+
+  /** What is known of a check's leader, taken over. */
+  private follow({ state, leader }: Task): void {
+    if (!leader) return;
+    const { task, factor } = leader;
+    state.ceiling = Math.max(state.ceiling, factor * task.state.ceiling);
+    if (task.state.found !== Number.NEGATIVE_INFINITY) this.offer(state, task.state.pose);
+    const bound = factor * task.state.bound + UNLIKE * state.ceiling;
+    if (bound < state.bound) state.bound = bound;
+    raiseByRounding(state);
   }
 
   /** What is under way for a check of a later layout for which all is as it was; null where something changed. */
   private handOver(check: CheckForm, chain: Chain, load: ChainCase): Task | null {
     const known = this.tasks.find((task) => sameCheck(task.state.check, check));
     if (!known || !sameJointLoad(this, { chain, load }, check.joint)) return null;
+    this.follow(known);
+    known.leader = null;
     known.state.check = check;
     return known;
   }
@@ -147,7 +176,7 @@ export class WorstCase {
     }
     let pick: Task | null = fresh ?? null;
     for (const task of this.tasks) {
-      if (fresh || this.isIdle(task, gap)) continue;
+      if (fresh || this.isIdle(task, gap) || (task.leader && !this.isIdle(task.leader.task, gap))) continue;
       if (!pick || this.urgency(task) < this.urgency(pick)) pick = task;
     }
     if (pick) {
@@ -175,11 +204,18 @@ export class WorstCase {
   }
 
   rows(): readonly WorstRow[] {
+    for (const task of this.tasks) this.follow(task);
     return this.tasks.map((task) => this.row(task));
   }
 
   private advance(task: Task, gap: number): void {
     const { state } = task;
+    if (task.leader) {
+      this.follow(task);
+      // What is left then it does for itself.
+      if (this.isIdle(task.leader.task, gap)) task.leader = null;
+      return;
+    }
     if (task.goes === 1 && !this.gravity) {
       this.begin(task, gap);
       return;
