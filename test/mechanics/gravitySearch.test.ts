@@ -77,8 +77,8 @@ describe('certified worst under gravity', () => {
     ['force along gravity', { force: 'none' as const }],
   ] as const;
   for (const [name, options] of kinds) {
-    it(`holds against random and climbed poses: ${name} (1–9 joints, seeds 1–18)`, () => {
-      for (let seed = 1; seed <= 18; seed++) {
+    it(`holds against random and climbed poses: ${name} (1–9 joints, seeds 1–9)`, () => {
+      for (let seed = 1; seed <= 9; seed++) {
         const arm = randomArm(seed, { joints: 1 + ((seed - 1) % 9), ...options });
         const downward = name === 'force along gravity';
         holds(downward ? forced(arm, seed % 2 === 0 ? 1 : -1) : arm, seed, 1000);
