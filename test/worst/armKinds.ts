@@ -178,7 +178,12 @@ export const OTHER_KINDS: readonly ArmKind[] = [
   kind('motion and a force any way', { motion: true, force: 'any' }, same),
   kind('gears and belts', { drives: true }, same),
   kind('gears, belts and a force any way', { drives: true, force: 'any' }, same),
-  kind('gears, belts and motion', { drives: true, motion: true, force: 'tool' }, same),
+  {
+    // The ranges of torque of a drive make each climb in motion a search of its own
+    name: 'gears, belts and motion, six joints at most',
+    make: (seed, joints) =>
+      randomArm(seed, { joints: 1 + ((joints - 1) % 6), drives: true, motion: true, force: 'tool' }),
+  },
   kind('force any way, turning right round', { force: 'any', full: 1 }, same),
   kind('force any way, parallel axes', { force: 'any', parallel: 0.8, coincident: 0.4 }, same),
   kind('force any way, one degree of travel', { force: 'any', travel: Math.PI / 180, full: 0 }, same),
