@@ -92,7 +92,7 @@ describe('what lasts, on the sheet', () => {
     await expect.poll(async () => ((await tip.textContent()) ?? '').includes(mm.toPrecision(4)), PATIENT).toBe(true);
     // Nothing asks for a tip error in this file: told, and not passed.
     expect(await tip.textContent()).toContain('not rated');
-    await page.getByText('depends on the task: fill in `tip_error_mm`').first().waitFor();
+    await page.getByText('depends on the task: fill in tip_error_mm').first().waitFor();
     await line('system life').waitFor();
   });
 
