@@ -87,3 +87,13 @@ export function checkValue(check: CheckForm, w: Numbers, at: number): number {
   }
   return value;
 }
+
+/** A check whose forms hold at every torque: never below the check itself. */
+export function anyTorque(check: CheckForm): CheckForm {
+  const forms = check.forms.map((f) => ({
+    ...f,
+    torqueFrom: Number.NEGATIVE_INFINITY,
+    torqueTo: Number.POSITIVE_INFINITY,
+  }));
+  return { ...check, forms };
+}

@@ -8,7 +8,7 @@ import type { Flat, Numbers } from '../math/vector.ts';
 import type { BranchBoundState } from './branchBound.ts';
 import { BoxQueue } from './branchBoundQueue.ts';
 import type { Chain, ChainCase } from './chain.ts';
-import { type CheckForm, type Form, form } from './form.ts';
+import { anyTorque, type CheckForm, type Form, form } from './form.ts';
 import { freePart, newFreeWorst } from './freeLoads.ts';
 import { MotionBox } from './motionBox.ts';
 import { nothingBound } from './motionNothing.ts';
@@ -38,6 +38,8 @@ const SMALL = 1e-13;
 const KEPT = 1 << 16;
 const RANDOM_POSES = 24;
 const CLIMBS = 2;
+/** Joints up to which a check with ranges of the torque is climbed as it is. */
+const CLIMBED_WHOLE = 5;
 /** First arcs of e: round the circle, and from pole to pole. */
 const AROUND = 16;
 const UPRIGHT = 6;
@@ -55,6 +57,9 @@ export class MotionSearch {
   private readonly gap: number;
   private readonly pieces: readonly Piece[];
   private readonly climber: Polish;
+  /** Climbs without the ranges of the torque, which is far quicker; null where the check has none. */
+  private readonly scout: Polish | null;
+  private whole = false;
   private readonly queue: BoxQueue;
   private readonly low: Flat;
   private readonly high: Flat;
@@ -72,6 +77,10 @@ export class MotionSearch {
     this.pose = new Float64Array(n);
     this.worst = newFreeWorst(n);
     this.climber = new Polish(chain, load, check);
+    const ranged = check.forms.some(
+      (f) => f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY,
+    );
+    this.scout = ranged && n > CLIMBED_WHOLE ? new Polish(chain, load, anyTorque(check)) : null;
     const box = (f: Form) => new MotionBox(chain, load, check.joint, f);
     this.pieces = check.forms.map((f) => ({
       form: f,
@@ -86,7 +95,7 @@ export class MotionSearch {
     this.keptLow = new Float64Array(size);
     this.keptHigh = new Float64Array(size);
     this.trial = new Float64Array(n);
-    for (const seed of options.seeds ?? []) this.offer(seed);
+    for (const seed of (options.seeds ?? []).slice(0, this.scout ? 1 : undefined)) this.offer(seed);
     this.firstPoses();
     const nothing =
       this.found <= NOTHING * this.ceiling ? nothingBound(chain, load, check, SMALL * this.ceiling) : Number.NaN;
@@ -116,8 +125,17 @@ export class MotionSearch {
 
   /** Works on until `boxes` more boxes are bounded or the gap is closed. */
   step(boxes: number): void {
+    this.climbWhole();
     const until = this.boxes + boxes;
     while (this.boxes < until && !this.done) this.cut();
+  }
+
+  /** Once, from the best pose that a climb without the ranges of the torque came to. */
+  private climbWhole(): void {
+    if (!this.scout || this.whole) return;
+    this.whole = true;
+    this.trial.set(this.pose);
+    this.take(this.climber.climb(this.trial));
   }
 
   /** Values up to this are close enough to `found`. */
@@ -128,7 +146,17 @@ export class MotionSearch {
 
   private offer(start: Numbers): void {
     for (let k = 0; k < this.chain.n; k++) this.trial[k] = start[k]!;
-    const value = this.climber.climb(this.trial);
+    let value = Number.NaN;
+    if (this.scout) {
+      this.scout.climb(this.trial);
+      value = this.climber.value(this.trial);
+    } else value = this.climber.climb(this.trial);
+    this.take(value);
+  }
+
+  /** Keeps the pose in `trial` with its motion where its value is the highest yet. */
+  private take(value: number): void {
+    // what is not a number stays: it has no bound
     if (value <= this.found) return;
     this.found = value;
     this.pose.set(this.trial);
@@ -145,7 +173,7 @@ export class MotionSearch {
     const { from, to } = this.chain;
     const poses = Array.from({ length: RANDOM_POSES }, () => {
       const pose = Float64Array.from(from, (low, k) => random.between(low, to[k]!));
-      return { pose, value: this.climber.value(pose) };
+      return { pose, value: (this.scout ?? this.climber).value(pose) };
     });
     poses.sort((a, b) => b.value - a.value);
     for (const { pose } of poses.slice(0, CLIMBS)) this.offer(pose);

@@ -11,9 +11,9 @@
  * less than what can happen. In motion both branches of a gear or belt count, whatever the sign of the torque. Such cases are looked at
  * every `FREE_STEP` of any joint.
  */
-import { angleAt, anyTorque, type DutyPart, motionAt, type PathMotion, turnsIn } from '../capacity/duty/index.ts';
+import { angleAt, type DutyPart, motionAt, type PathMotion, turnsIn } from '../capacity/duty/index.ts';
 import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
-import { type CheckForm, checkValue } from '../mechanics/form.ts';
+import { anyTorque, type CheckForm, checkValue } from '../mechanics/form.ts';
 import { freeScratch, hasFree, newFreeWorst, worstOverFree } from '../mechanics/freeLoads.ts';
 import { newPoseLoad, poseLoad, poseLoadScratch } from '../mechanics/freeLoadsPose.ts';
 import { dynamicLoads, poseScratch } from '../mechanics/newtonEuler.ts';

@@ -7,9 +7,9 @@
  *
  * Beside it stands the load that was found: attained at a pose, with one joint load. What lies between the two is not known.
  */
-import { anyTorque, type DutyPart } from '../capacity/duty/index.ts';
+import type { DutyPart } from '../capacity/duty/index.ts';
 import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
-import { type CheckForm, checkValue } from '../mechanics/form.ts';
+import { anyTorque, type CheckForm, checkValue } from '../mechanics/form.ts';
 import { poseScratch, staticLoads } from '../mechanics/newtonEuler.ts';
 import { Polish, type Polished, polish } from '../mechanics/polish.ts';
 import type { TravelBounds } from '../mechanics/travelBounds.ts';

@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import type { Arm, LoadCase } from '../../src/arm/arm.ts';
 import type { ArmFile } from '../../src/arm/armFile.ts';
-import { anyTorque, type DutyPart, dutyPart } from '../../src/capacity/duty/index.ts';
+import { type DutyPart, dutyPart } from '../../src/capacity/duty/index.ts';
 import { jointParts } from '../../src/capacity/index.ts';
 import { bareBearing } from '../../src/capacity/rolling/index.ts';
 import { seededRandom } from '../../src/math/random.ts';
 import { flattenArm, WRENCH } from '../../src/mechanics/chain.ts';
-import { checkValue } from '../../src/mechanics/form.ts';
+import { anyTorque, checkValue } from '../../src/mechanics/form.ts';
 import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { dynamicLoads, poseScratch } from '../../src/mechanics/newtonEuler.ts';
 import { sphereBounds } from '../../src/mechanics/travelBounds.ts';

@@ -25,16 +25,6 @@ import { type FlangeFace, flangeFace } from '../plain/index.ts';
 import { dynamicEquivalent, shareThrust } from '../rolling/index.ts';
 import type { Assessed } from '../rule.ts';
 
-/** A check whose forms hold at every torque: never below the check itself. */
-export function anyTorque(check: CheckForm): CheckForm {
-  const forms = check.forms.map((f) => ({
-    ...f,
-    torqueFrom: Number.NEGATIVE_INFINITY,
-    torqueTo: Number.POSITIVE_INFINITY,
-  }));
-  return { ...check, forms };
-}
-
 interface Common {
   /** Chain index of the joint, and its index in the arm file. */
   readonly joint: number;
