@@ -207,6 +207,25 @@ function* spanLines(): Generator<string> {
   }
 }
 
+/** Arms in motion: time until every gap is closed to 1 %, or the largest and the median gap when the time is up. */
+function* motionLines(): Generator<string> {
+  yield '  motion, radial loads on every bearing to 1 %, one thread, at most 20 s of processor time an arm';
+  for (const file of ['swing-joint', 'two-link', 'picking-arm']) {
+    const reading = readArm(readFileSync(`models/${file}.arm.json`, 'utf8'));
+    if (!reading.ok) throw new Error('the model has issues');
+    const { arm } = reading;
+    const chain = flattenArm(arm);
+    const load = chain.cases.find((each) => each.speed !== null)!;
+    const start = clock();
+    const search = new WorstCase(chain, load, loadChecks(arm, chain).filter(isRadial));
+    while (search.open(0.01) && clock() - start < 20) search.step(0.01);
+    const gaps = search.rows().map((row) => row.gap);
+    const closed = gaps.filter((gap) => gap <= 0.01).length;
+    const open = `largest gap ${(100 * quantile(gaps, 1)).toFixed(1)} %, median ${(100 * quantile(gaps, 0.5)).toFixed(1)} %`;
+    yield `    ${file.padEnd(14)} ${chain.n} joints: ${closed} of ${gaps.length} closed in ${seconds(clock() - start)}; ${open}`;
+  }
+}
+
 export async function* worstLines(): AsyncGenerator<string> {
   yield `certified worst (load on the machine ${loadavg()[0]!.toFixed(1)})`;
   warmUp();
@@ -215,4 +234,5 @@ export async function* worstLines(): AsyncGenerator<string> {
   yield* hundredLines();
   yield* jointsLines();
   yield* contractLines();
+  yield* motionLines();
 }
