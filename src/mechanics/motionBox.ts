@@ -40,7 +40,8 @@ export class MotionBox {
   private readonly place: Int32Array;
   private readonly most: number;
 
-  constructor(chain: Chain, load: ChainCase, joint: number, f: Form) {
+  /** `inLink`: e is taken in the frame of the joint's link, for forms that are the same all round its axis. */
+  constructor(chain: Chain, load: ChainCase, joint: number, f: Form, inLink: boolean) {
     const { n } = chain;
     this.n = n;
     this.load = load;
@@ -49,7 +50,7 @@ export class MotionBox {
     this.size = 2 * n + 2;
     const variables = n + 2;
     this.box = new SeriesBox(variables);
-    this.parts = new MotionChain(chain, load, joint, variables);
+    this.parts = new MotionChain(chain, load, joint, variables, inLink);
     this.rates = new MotionRates(n, variables);
     this.cost = new Float64Array(this.size);
     this.angles = { middle: new Float64Array(n), half: new Float64Array(n), variable: new Int32Array(n) };

@@ -16,9 +16,21 @@
  * F = M w + β × h, K = h wᵀ + Σ m r (β × r)ᵀ. Inboard of it F and K are carried on. Own derivation; held against the recursion.
  */
 import { type Flat, multiply33, rotateBack3 } from '../math/vector.ts';
-import { type Chain, type ChainCase, INERTIA } from './chain.ts';
+import type { Chain, ChainCase } from './chain.ts';
 import { pairCount, pairIndex } from './freeLoadsPose.ts';
-import { Series, type SeriesBox, termCount, turnMatrixSeries, turnSeries } from './motionSeries.ts';
+import { Series, type SeriesBox, turnMatrixSeries, turnSeries } from './motionSeries.ts';
+import {
+  addAlong,
+  addCross,
+  addEntry,
+  addOuter,
+  addOuterBack,
+  addPart,
+  addProductCross,
+  addToPart,
+  secondMoments,
+  setRateVector,
+} from './motionTerms.ts';
 
 /** How an angle is taken in a box: its variable, or -1 with the half width that is not expanded. */
 export interface BoxAngles {
@@ -40,6 +52,7 @@ export class MotionChain {
   private readonly chain: Chain;
   private readonly load: ChainCase;
   private readonly joint: number;
+  private readonly inLink: boolean;
   private readonly second: Flat;
   private readonly outMass: Flat;
   private readonly turn: Flat;
@@ -62,9 +75,13 @@ export class MotionChain {
   private betaSize = 0;
   private twistSize = 0;
 
-  /** `variables`: most of them in a box. */
-  constructor(chain: Chain, load: ChainCase, joint: number, variables: number) {
+  /**
+   * `variables`: most of them in a box. `inLink`: the twist is given in the link's frame, for forms that are the same all round the axis; then the
+   * joint's own angle turns no more than what comes from inboard.
+   */
+  constructor(chain: Chain, load: ChainCase, joint: number, variables: number, inLink: boolean) {
     const { n } = chain;
+    this.inLink = inLink;
     const list = (count: number, width: number) => Array.from({ length: count }, () => new Series(width, variables));
     this.chain = chain;
     this.load = load;
@@ -100,7 +117,7 @@ export class MotionChain {
     this.forceWeight = Math.hypot(...chain.gravity) + this.momentWeight * far;
   }
 
-  /** Fills everything for the twist (alpha, beta), series in the housing frame of the joint. */
+  /** Fills everything for the twist (alpha, beta), series in the housing frame of the joint, or in its link's. */
   fill(box: SeriesBox, angles: BoxAngles, alpha: Series, beta: Series): void {
     const { chain, joint, load, still, turn, middleTurn, w, beta: b } = this;
     this.blame.fill(0);
@@ -111,6 +128,11 @@ export class MotionChain {
       middleTurn.set([c, -s, 0, s, c, 0, 0, 0, 1]);
       multiply33(turn, 9 * k, chain.rotation, 9 * k, middleTurn, 0);
       if (k !== joint) continue;
+      if (this.inLink) {
+        w[k]!.copy(alpha);
+        b[k]!.copy(beta);
+        continue;
+      }
       turnSeries(w[k]!, alpha, middleTurn, 0, true);
       turnSeries(b[k]!, beta, middleTurn, 0, true);
     }
@@ -120,6 +142,11 @@ export class MotionChain {
     this.gather(box, angles);
     this.carry(box, angles);
     if (load.force === 'base') addAlong(still, this.tip, load.forceUnit, load.magnitude);
+  }
+
+  /** Whether the twist and what stands outboard of joint k are both given in its link's frame, so that its angle turns neither. */
+  private standsStill(k: number): boolean {
+    return this.inLink && k === this.joint;
   }
 
   /** Turns a vector by how far joint k stands off its middle. Returns what the remainder grows by. */
@@ -143,8 +170,10 @@ export class MotionChain {
     const [w, b] = last ? [tip, reach] : [this.w[k + 1]!, this.beta[k + 1]!];
     w.copy(this.w[k]!);
     b.copy(this.beta[k]!);
-    const more = this.swing(box, angles, k, w, -1);
-    blame[k]! += this.forceWeight * this.outMass[k]! * more + this.momentWeight * this.swing(box, angles, k, b, -1);
+    if (!this.standsStill(k)) {
+      blame[k]! += this.forceWeight * this.outMass[k]! * this.swing(box, angles, k, w, -1);
+      blame[k]! += this.momentWeight * this.swing(box, angles, k, b, -1);
+    }
     if (last) {
       addCross(tip, b, chain.tipOrigin, 0);
       addAlong(this.still, tip, load.forceUnit, load.magnitude);
@@ -168,10 +197,12 @@ export class MotionChain {
       for (let k = 0; k < 3; k++) h.c[k]! += load.first[3 * m + k]!;
       for (let k = 0; k < 9; k++) S.c[k]! += this.second[9 * m + k]!;
       this.passRates(box, angles, m);
-      blame[m]! += this.twistSize * this.forceWeight * this.swing(box, angles, m, h, 1);
-      blame[m]! += this.betaSize * this.momentWeight * this.swingMatrix(box, angles, m, S);
-      if (pointing) blame[m]! += this.betaSize * load.magnitude * this.swing(box, angles, m, reach, 1);
-      this.outboardParts(box, m);
+      if (!this.standsStill(m)) {
+        blame[m]! += this.twistSize * this.forceWeight * this.swing(box, angles, m, h, 1);
+        blame[m]! += this.betaSize * this.momentWeight * this.swingMatrix(box, angles, m, S);
+        if (pointing) blame[m]! += this.betaSize * load.magnitude * this.swing(box, angles, m, reach, 1);
+      }
+      this.outboardParts(box, angles, m);
       if (m === joint) break;
       turnSeries(h, h, turn, 9 * m, false);
       turnMatrixSeries(S, turn, 9 * m);
@@ -190,8 +221,8 @@ export class MotionChain {
   }
 
   /** What joint m ≥ `joint` gives: entries of K = h wᵀ + Σ m r (β × r)ᵀ, of products of what outboard angles turn and what those between do. */
-  private outboardParts(box: SeriesBox, m: number): void {
-    const { chain, load, h, S, accel, rate, c, turn } = this;
+  private outboardParts(box: SeriesBox, angles: BoxAngles, m: number): void {
+    const { chain, load, h, S, accel, rate, c, turn, blame } = this;
     const [w, b, A, C, way] = [this.w[m]!, this.beta[m]!, accel[m]!, rate[pairIndex(chain.n, m, m)]!, c[m]!];
     A.clear();
     C.clear();
@@ -220,6 +251,7 @@ export class MotionChain {
     box.addProduct(way, 1, h, 1, w, 2, -1);
     box.addProduct(way, 1, S, 4, b, 0, -1);
     box.addProduct(way, 1, S, 1, b, 1, 1);
+    if (this.standsStill(m)) blame[m]! += this.momentWeight * this.swing(box, angles, m, way, 1);
     turnSeries(way, way, turn, 9 * m, false);
   }
 
@@ -256,18 +288,23 @@ export class MotionChain {
         if (moving) addOuter(K, chain.origin, 3 * m + 3, F);
         this.ownParts(m);
         this.passRates(box, angles, m);
+      }
+      const turned = m < joint || this.inLink;
+      if (turned) {
         // what gravity does along the first axis does not change with its angle
         if (m === 0) addAlong(still, F, [0, 0, down[2]!], 1);
         blame[m]! += (m === 0 ? Math.hypot(down[0]!, down[1]!) : this.forceWeight) * this.swing(box, angles, m, F, 1);
         if (moving && m > 0) blame[m]! += this.momentWeight * this.swingMatrix(box, angles, m, K);
         if (load.force === 'base') blame[m]! += load.magnitude * this.swing(box, angles, m, tip, 1);
+      }
+      if (m < joint) {
         c[m]!.clear();
         if (m > 0 && load.speed && load.speed[m]! > 0) {
           setRateVector(c[m]!, K);
           turnSeries(c[m]!, c[m]!, turn, 9 * m, false);
         }
       }
-      if (m === 0) addAlong(still, F, joint === 0 ? down : [down[0]!, down[1]!, 0], 1);
+      if (m === 0) addAlong(still, F, turned ? [down[0]!, down[1]!, 0] : down, 1);
       turnSeries(F, F, turn, 9 * m, false);
       if (moving && m > 0) turnMatrixSeries(K, turn, 9 * m);
       if (load.force === 'base') turnSeries(tip, tip, turn, 9 * m, false);
@@ -304,111 +341,4 @@ export class MotionChain {
       addEntry(own, K, 4, load.speed[m]! ** 2);
     }
   }
-}
-
-/** Second moments Σ m r rᵀ about the link origins, from the inertias: ½ tr(I) 1 - I. [9n] */
-function secondMoments(load: ChainCase, n: number): Flat {
-  const out = new Float64Array(9 * n);
-  for (let k = 0; k < n; k++) {
-    const o = INERTIA.stride * k;
-    const about = (entry: number) => load.inertia[o + entry]!;
-    const half = (about(INERTIA.xx) + about(INERTIA.yy) + about(INERTIA.zz)) / 2;
-    const [xy, xz, yz] = [-about(INERTIA.xy), -about(INERTIA.xz), -about(INERTIA.yz)];
-    const rows = [half - about(INERTIA.xx), xy, xz, xy, half - about(INERTIA.yy), yz, xz, yz, half - about(INERTIA.zz)];
-    out.set(rows, 9 * k);
-  }
-  return out;
-}
-
-/** v += b × p, p constant. */
-function addCross(v: Series, b: Series, p: ArrayLike<number>, po: number): void {
-  const [x, y, z] = [p[po]!, p[po + 1]!, p[po + 2]!];
-  v.grow(b.live);
-  for (let t = 0; t < 3 * termCount(b.live); t += 3) {
-    const [bx, by, bz] = [b.c[t]!, b.c[t + 1]!, b.c[t + 2]!];
-    v.c[t]! += by * z - bz * y;
-    v.c[t + 1]! += bz * x - bx * z;
-    v.c[t + 2]! += bx * y - by * x;
-  }
-  v.rest += Math.hypot(x, y, z) * b.rest;
-}
-
-/** K += p Fᵀ, p constant. */
-function addOuter(K: Series, p: ArrayLike<number>, po: number, F: Series): void {
-  K.grow(F.live);
-  const [x, y, z] = [p[po]!, p[po + 1]!, p[po + 2]!];
-  for (let t = 0; t < termCount(F.live); t++) {
-    for (let k = 0; k < 3; k++) {
-      const f = F.c[3 * t + k]!;
-      K.c[9 * t + k]! += x * f;
-      K.c[9 * t + 3 + k]! += y * f;
-      K.c[9 * t + 6 + k]! += z * f;
-    }
-  }
-  K.rest += Math.hypot(x, y, z) * F.rest;
-}
-
-/** K += F pᵀ, p constant. */
-function addOuterBack(K: Series, F: Series, p: ArrayLike<number>, po: number): void {
-  K.grow(F.live);
-  const [x, y, z] = [p[po]!, p[po + 1]!, p[po + 2]!];
-  for (let t = 0; t < termCount(F.live); t++) {
-    for (let r = 0; r < 3; r++) {
-      const f = F.c[3 * t + r]!;
-      K.c[9 * t + 3 * r]! += f * x;
-      K.c[9 * t + 3 * r + 1]! += f * y;
-      K.c[9 * t + 3 * r + 2]! += f * z;
-    }
-  }
-  K.rest += Math.hypot(x, y, z) * F.rest;
-}
-
-/** out += a × b. */
-function addProductCross(box: SeriesBox, out: Series, a: Series, b: Series): void {
-  for (let k = 0; k < 3; k++) {
-    const [p, q] = [(k + 1) % 3, (k + 2) % 3];
-    box.addProduct(out, k, a, p, b, q, 1);
-    box.addProduct(out, k, a, q, b, p, -1);
-  }
-}
-
-/** out += scale · (v along a constant direction). */
-function addAlong(out: Series, v: Series, way: ArrayLike<number>, scale: number): void {
-  out.grow(v.live);
-  for (let t = 0; t < termCount(v.live); t++) {
-    out.c[t]! += scale * (way[0]! * v.c[3 * t]! + way[1]! * v.c[3 * t + 1]! + way[2]! * v.c[3 * t + 2]!);
-  }
-  out.rest += Math.abs(scale) * Math.hypot(way[0]!, way[1]!, way[2]!) * v.rest;
-}
-
-/** out's part += a number. */
-function addToPart(out: Series, part: number, v: Series): void {
-  out.grow(v.live);
-  for (let t = 0; t < termCount(v.live); t++) out.c[3 * t + part]! += v.c[t]!;
-  out.rest += v.rest;
-}
-
-/** out += scale · part of a vector. */
-function addPart(out: Series, v: Series, part: number, scale: number): void {
-  out.grow(v.live);
-  for (let t = 0; t < termCount(v.live); t++) out.c[t]! += scale * v.c[3 * t + part]!;
-  out.rest += Math.abs(scale) * v.rest;
-}
-
-/** out += scale · entry of a matrix. Two entries of one matrix together owe at most √2 of its remainder, so each owes 1/√2. */
-function addEntry(out: Series, K: Series, entry: number, scale: number): void {
-  out.grow(K.live);
-  for (let t = 0; t < termCount(K.live); t++) out.c[t]! += scale * K.c[9 * t + entry]!;
-  out.rest += Math.abs(scale) * Math.SQRT1_2 * K.rest;
-}
-
-/** c = (-K_xz, -K_yz, K_xx + K_yy). */
-function setRateVector(c: Series, K: Series): void {
-  c.grow(K.live);
-  for (let t = 0; t < termCount(K.live); t++) {
-    c.c[3 * t] = -K.c[9 * t + 2]!;
-    c.c[3 * t + 1] = -K.c[9 * t + 5]!;
-    c.c[3 * t + 2] = K.c[9 * t]! + K.c[9 * t + 4]!;
-  }
-  c.rest = Math.SQRT2 * K.rest;
 }

@@ -12,7 +12,9 @@ import { anyTorque, type CheckForm, type Form, form } from './form.ts';
 import { freePart, newFreeWorst } from './freeLoads.ts';
 import { MotionBox } from './motionBox.ts';
 import { nothingBound } from './motionNothing.ts';
+import { standsOff } from './motionTerms.ts';
 import { Polish } from './polish.ts';
+import { sameAllRound } from './roundForms.ts';
 
 export interface MotionSearchOptions {
   /** Relative gap asked for: (bound - found)/bound. */
@@ -38,6 +40,7 @@ const SMALL = 1e-13;
 const KEPT = 1 << 16;
 const RANDOM_POSES = 24;
 const CLIMBS = 2;
+const OFF_AXIS = 0.5;
 /** Joints up to which a check with ranges of the torque is climbed as it is. */
 const CLIMBED_WHOLE = 5;
 /** First arcs of e: round the circle, and from pole to pole. */
@@ -81,7 +84,9 @@ export class MotionSearch {
       (f) => f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY,
     );
     this.scout = ranged && n > CLIMBED_WHOLE ? new Polish(chain, load, anyTorque(check)) : null;
-    const box = (f: Form) => new MotionBox(chain, load, check.joint, f);
+    // read in the link's frame, what stands off the axis stands still; what is balanced about it is better left to turn
+    const offAxis = standsOff(chain, load, check.joint) > OFF_AXIS;
+    const box = (f: Form) => new MotionBox(chain, load, check.joint, f, offAxis && sameAllRound(f));
     this.pieces = check.forms.map((f) => ({
       form: f,
       box: box(f),

@@ -6,6 +6,7 @@ import { newReducedForm, PART, type ReducedForm, reduceForm } from '../../src/me
 import { newPoseLoad, pairIndex, poseLoad, poseLoadScratch } from '../../src/mechanics/freeLoadsPose.ts';
 import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { MotionBox } from '../../src/mechanics/motionBox.ts';
+import { sameAllRound } from '../../src/mechanics/roundForms.ts';
 import { randomArm } from '../randomArm.ts';
 
 const FORCES = ['none', 'any', 'base', 'tool'] as const;
@@ -69,7 +70,9 @@ function trials(seed: number, width: number): Trial[] {
   const checks = [...loadChecks(arm, chain).filter((_, k) => k % 3 === 0), oddCheck(random.below(n), oddForms())];
   return checks.flatMap((check) =>
     check.forms.map((f) => {
-      const box = new MotionBox(chain, load, check.joint, f);
+      // every other form that allows it is read in the link's frame
+      const inLink = sameAllRound(f) && (seed + check.joint) % 2 === 0;
+      const box = new MotionBox(chain, load, check.joint, f, inLink);
       const low = new Float64Array(box.size);
       const high = new Float64Array(box.size);
       for (let k = 0; k < n + 2; k++) {
@@ -89,7 +92,7 @@ function trials(seed: number, width: number): Trial[] {
       const value = (x: Float64Array, y: Float64Array) => {
         poseLoad(chain, load, x, at, scratch);
         reduceForm(reduced, f, check.joint, load, at, 0, 0);
-        const [theta, phi] = [x[n]!, x[n + 1]!];
+        const [theta, phi] = [x[n]! + (inLink && f.rows > 1 ? x[check.joint]! : 0), x[n + 1]!];
         const e = [Math.cos(phi) * Math.cos(theta), Math.cos(phi) * Math.sin(theta), Math.sin(phi)];
         return valueAlong(reduced, e, y, x.subarray(n + 2));
       };

@@ -6,6 +6,7 @@ import { checkValue } from '../../src/mechanics/form.ts';
 import { worstAtPose } from '../../src/mechanics/freeLoads.ts';
 import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { MotionSearch } from '../../src/mechanics/motionSearch.ts';
+import { standsOff } from '../../src/mechanics/motionTerms.ts';
 import { dynamicLoads, poseScratch } from '../../src/mechanics/newtonEuler.ts';
 import { randomArm } from '../randomArm.ts';
 
@@ -141,6 +142,17 @@ describe('the certified worst in motion', () => {
       if (check.joint > 0 || check.check !== 'moment') continue;
       expect(new MotionSearch(other, other.cases[0]!, check, { gap: 0.5 }).found).toBeGreaterThan(0.01);
     }
+  });
+
+  it('tells what stands off its axis from what is balanced about it', () => {
+    const arm = swing(1, 1);
+    const chain = flattenArm(arm);
+    // a point mass off the axis
+    expect(standsOff(chain, chain.cases[0]!, 0)).toBeCloseTo(1, 12);
+    const [joint] = arm.joints;
+    const link = { ...joint!.link, centre: [0, 0.3, 0] as const, inertia: { ...joint!.link.inertia!, yy: 0.1 } };
+    const balanced = flattenArm({ ...arm, joints: [{ ...joint!, link }] });
+    expect(standsOff(balanced, balanced.cases[0]!, 0)).toBe(0);
   });
 
   it('keeps a bound that is one when its boxes run out', () => {
