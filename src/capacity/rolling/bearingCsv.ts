@@ -1,6 +1,6 @@
 /**
- * The user's own table of bearings as CSV: a header with `name` and the keys of the arm file's bearings, then one bearing a record. An empty
- * field is a key left out. Numbers have a decimal point. `clearance_um` of a rolling bearing is `from..to`, of a plain bushing one
+ * The user's own table of bearings as CSV: a header with `name` and the keys of the arm file's bearings, then one bearing a record of as many
+ * fields. An empty field is a key left out. Numbers have a decimal point. `clearance_um` of a rolling bearing is `from..to`, of a plain bushing one
  * number. What the fields may hold is judged by the arm file's own reader; nothing is repaired.
  */
 import type { Bearing } from '../../arm/arm.ts';
@@ -160,6 +160,10 @@ export function readBearingCsv(text: string): BearingCsvReading {
     const first = record[0]!;
     const extra = record[keys.length];
     if (extra) report('csv-fields', extra, `${record.length} fields`, `at most ${keys.length}, as the header has`);
+    // Cut short, not left empty: what is lost would be filled with estimates.
+    else if (record.length < keys.length) {
+      report('csv-fields', record.at(-1)!, `${record.length} fields`, `${keys.length}, as the header has`);
+    }
     const name = record[column('name')]?.text.trim() ?? '';
     const nameField = record[column('name')] ?? first;
     if (name === '') report('missing', nameField, 'no name', 'a name');

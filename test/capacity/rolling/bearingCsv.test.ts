@@ -96,14 +96,8 @@ describe('what is wrong is told with its place', () => {
     ['a clearance in one number', `${HEADER},clearance_um\n${ROW},20`, [['wrong-type', 2, 53]]],
     ['a key of the other family', `${HEADER},pv_limit_MPa_m_s\n${ROW},2`, [['unknown-key', 2, 53]]],
     ['a field too many', `${HEADER}\n${ROW},more`, [['csv-fields', 2, 53]]],
-    [
-      'a record too short',
-      `${HEADER}\nx,deep-groove,20`,
-      [
-        ['missing', 2, 1],
-        ['missing', 2, 1],
-      ],
-    ],
+    ['a record too short', `${HEADER}\nx,deep-groove,20`, [['csv-fields', 2, 15]]],
+    ['a record cut before its ratings', `${HEADER}\n${ROW}\nx,deep-groove,20,47,14`, [['csv-fields', 3, 21]]],
     ['a quote that never closes', `${HEADER}\nx,deep-groove,20,47,14,,,"list`, [['csv-quote', 2, 26]]],
     ['text after a quote', `${HEADER}\n"x"y,deep-groove,20,47,14,,,`, [['csv-quote', 2, 4]]],
     ['a quote inside a field', `${HEADER}\nx,deep-groove,20,47,14,,,5" shaft`, [['csv-quote', 2, 27]]],
