@@ -2,7 +2,7 @@
 import { Command, CommanderError, Option, type OptionValues } from 'commander';
 import { version } from '../../package.json';
 import { EXIT, type ExitCode, UsageError } from './exit.ts';
-import { angleList, notNegative, positive, wholeNumber } from './optionValues.ts';
+import { angleList, notNegative, positive, shareBelowOne, wholeNumber } from './optionValues.ts';
 
 const FILE_HELP = 'arm file (*.arm.json), or - for standard input';
 
@@ -91,9 +91,13 @@ A design aid: results are to be checked by a competent engineer.`,
       .option(
         '--gap <share>',
         'gap between bound and found to be closed, a share of the bound (default: 0.001)',
-        positive,
+        shareBelowOne,
       )
-      .option('--seconds <time>', 'time allowed; the best so far is kept (default: 30)', positive);
+      .option(
+        '--seconds <time>',
+        'time for the search, s; the best so far is kept (default: 30). Life, fatigue and play take their own',
+        positive,
+      );
 
   overGrid(
     verb(

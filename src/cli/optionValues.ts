@@ -26,6 +26,13 @@ export function positive(text: string): number {
   return value;
 }
 
+/** A share above 0 and below 1: at 1 there is nothing left to close. */
+export function shareBelowOne(text: string): number {
+  const value = decimal(text);
+  if (!(value > 0 && value < 1)) throw new InvalidArgumentError('It takes a share above 0 and below 1, such as 0.001.');
+  return value;
+}
+
 export function notNegative(text: string): number {
   const value = decimal(text);
   if (!(value >= 0)) throw new InvalidArgumentError('It takes a number of 0 or more.');

@@ -44,6 +44,7 @@ export async function worst(file: string, options: WorstOptions): Promise<ExitCo
     gap,
     seconds,
     signal: interrupt.signal,
+    someRows: true,
     onBetter: (better) => {
       best = better;
       const closed = better.rows.filter((row) => row.certified).length;

@@ -8,6 +8,7 @@ import { BranchBound } from './branchBound.ts';
 import { InboardDirections } from './branchBoundInboard.ts';
 import type { Chain, ChainCase } from './chain.ts';
 import type { CheckForm } from './form.ts';
+import { formCeiling } from './formCeiling.ts';
 import { FreeForceSearch, tipMass } from './freeForceSearch.ts';
 import { type FreePart, freePart, worstAtPose } from './freeLoads.ts';
 import { GravityClimb } from './gravityClimb.ts';
@@ -40,6 +41,8 @@ const PATIENCE = 50_000;
 const FIRST_GOES = 3;
 /** Poses of a first look at a check, and rounds of its first bound. */
 const FIRST_POSES = 12;
+/** Fewer in motion, where a pose takes far longer. */
+const FIRST_MOVING = 2;
 const FIRST_ROUNDS = 2;
 
 /** Allowable values of checks, in the check's unit. */
@@ -246,21 +249,26 @@ export class WorstCase {
 
   /** First bound, and the best of a few poses. */
   private begin({ state, spheres }: Task, gap: number): void {
+    const { chain, load } = this;
     if (spheres?.open(gap)) spheres.round(gap);
     else {
       this.travel ??= this.firstBounds();
-      state.bound = Math.min(state.bound, this.travel.get(state) ?? Number.POSITIVE_INFINITY);
-      state.ceiling = Math.max(state.ceiling, Number.isFinite(state.bound) ? state.bound : 0);
+      // by lengths and masses: the bound itself may be 0 where what is attained is rounding
+      for (const f of state.check.forms)
+        state.ceiling = Math.max(state.ceiling, formCeiling(chain, load, state.check.joint, f));
+      const travel = this.travel.get(state) ?? Number.POSITIVE_INFINITY;
+      state.bound = Math.min(state.bound, travel + ROUNDING * state.ceiling);
     }
     const random = seededRandom(state.check.joint + 1);
-    const { from, to } = this.chain;
-    for (let k = 0; k < FIRST_POSES; k++) {
+    const { from, to } = chain;
+    const few = load.speed !== null;
+    for (let k = 0; k < (few ? FIRST_MOVING : FIRST_POSES); k++) {
       this.offer(
         state,
         Float64Array.from(from, (low, i) => (k === 0 ? 0.5 * (low + to[i]!) : random.between(low, to[i]!))),
       );
     }
-    for (const pose of this.seeds(state)) this.offer(state, pose);
+    for (const pose of this.seeds(state).slice(0, few ? 1 : undefined)) this.offer(state, pose);
   }
 
   /** Bounds of every state that has none yet: those of one joint share their tables. */

@@ -79,6 +79,8 @@ export interface WorstRunOptions {
   readonly gap?: number;
   readonly seconds?: number;
   readonly signal?: AbortSignal;
+  /** A stop before every check was looked at gives the rows of those that were; else none. */
+  readonly someRows?: boolean;
   /** Worst of an earlier layout: joints of which every check is as it was are not searched again. */
   readonly earlier?: EarlierWorst | null;
   /** After each part: the best so far, and how much of the present pass is done (0 to 1). */
@@ -94,7 +96,7 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
   const checks = armChecks(arm, chain);
   const best = new BestRows(chain, checks, options.earlier ?? null);
   let stopped = false;
-  const result = () => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end);
+  const result = (some = false) => best.result(gap, (Date.now() - begin) / 1000, stopped || Date.now() > end, some);
   for (const share of PASSES) {
     const inputs = allParts(chain).flatMap((part) => best.openPart(part, gap));
     if (inputs.length === 0) break;
@@ -114,7 +116,7 @@ export async function runWorst(arm: Arm, options: WorstRunOptions): Promise<Wors
     stopped = finished.stopped;
     if (stopped || Date.now() > end) break;
   }
-  return result();
+  return result(options.someRows);
 }
 
 /** Long parts first, so that workers end together: cases for branch and bound joint by joint, then the others whole. */
@@ -158,21 +160,21 @@ class BestRows {
     return open.size === 0 ? [] : [{ ...part, joints: part.joints.filter((joint) => open.has(joint)) }];
   }
 
-  /** Rows so far; empty while some part was never reached. */
-  result(gap: number, seconds: number, late: boolean): WorstResult {
-    const cases = this.rows.map((rows, caseIndex) => ({ caseIndex, rows: rows.filter((row) => row !== null) }));
-    if (cases.some(({ rows }) => rows.length < this.checks.length)) {
-      return { rows: [], eachCase: [], seconds, certified: false, partial: true };
-    }
-    const certain = cases.map(({ caseIndex, rows }) => ({
+  /** Rows so far; while some part was never reached, empty, or with `some` those that were reached in every case. */
+  result(gap: number, seconds: number, late: boolean, some = false): WorstResult {
+    const reached = this.checks.map((_, place) => this.rows.every((rows) => rows[place] !== null));
+    const all = reached.every((each) => each);
+    if (!all && !some) return { rows: [], eachCase: [], seconds, certified: false, partial: true };
+    const certain = this.rows.map((rows, caseIndex) => ({
       caseIndex,
-      rows: rows.map((row) => ({
-        ...row,
-        certified: row.gap !== null && row.gap <= gap && Number.isFinite(row.value),
-      })),
+      rows: rows.flatMap((row, place) =>
+        row !== null && reached[place]
+          ? [{ ...row, certified: row.gap !== null && row.gap <= gap && Number.isFinite(row.value) }]
+          : [],
+      ),
     }));
     const done = worstResult(certain, gap, seconds, false);
-    return { ...done, partial: late && !done.certified };
+    return { ...done, certified: all && done.certified, partial: !all || (late && !done.certified) };
   }
 
   private places(input: Part): readonly number[] {

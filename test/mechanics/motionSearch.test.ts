@@ -8,6 +8,7 @@ import { loadChecks } from '../../src/mechanics/loadChecks.ts';
 import { MotionSearch } from '../../src/mechanics/motionSearch.ts';
 import { standsOff } from '../../src/mechanics/motionTerms.ts';
 import { dynamicLoads, poseScratch } from '../../src/mechanics/newtonEuler.ts';
+import { WorstCase } from '../../src/mechanics/worstCase.ts';
 import { randomArm } from '../randomArm.ts';
 
 /** One joint with a level axis and a hub midway between its bearings, that swings a point mass of 3 kg on a bar of 0.5 m right round. */
@@ -165,3 +166,24 @@ describe('the certified worst in motion', () => {
     expect(search.bound).toBeGreaterThan(search.found / 0.999);
   });
 });
+
+describe('what is attained by rounding alone', () => {
+  it('stands under a bound of nothing: a skew axis without gravity, thrust on a body that whirls', () => {
+    const one = swing(1, 2);
+    const arm: Arm = { ...one, gravity: [0, 0, 0], joints: [{ ...one.joints[0]!, axis: skew(-0.102, 0.922, -0.68) }] };
+    const chain = flattenArm(arm);
+    const checks = loadChecks(arm, chain);
+    const search = new WorstCase(chain, chain.cases[0]!, checks);
+    while (!search.begun) search.step(0.01);
+    for (let k = 0; k < 60 && search.open(0.01); k++) search.step(0.01);
+    for (const row of search.rows()) {
+      expect(row.bound, row.check.check).toBeGreaterThanOrEqual(row.found);
+      if (row.check.check.startsWith('thrust')) expect(row.bound).toBeLessThan(1e-6);
+    }
+  });
+});
+
+function skew(x: number, y: number, z: number): [number, number, number] {
+  const size = Math.hypot(x, y, z);
+  return [x / size, y / size, z / size];
+}
