@@ -108,6 +108,7 @@ function alongPath(
     duration: path.duration,
     samples: wear.samples,
     joints,
+    leavesTravel: wear.outside.some((beyond) => beyond > 0),
     notes,
   };
   return { segment: result, parts: found, swings };
@@ -181,6 +182,7 @@ function anywhere(
     duration: null,
     samples: 0,
     joints,
+    leavesTravel: false,
     notes,
   };
   return { segment: result, parts: found, swings: chain.names.map(() => null) };

@@ -9,7 +9,7 @@ import { wearLife } from '../capacity/plain/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import type { Chain } from '../mechanics/chain.ts';
 import type { BushingDuty, DutyBearing, DutyResult } from './dutyResult.ts';
-import { CERTIFIED, headOf, judged, missingRow, placeOf, share } from './dutyRowParts.ts';
+import { CERTIFIED, headOf, judged, missingRow, placeOf, share, turningSegments, withNotes } from './dutyRowParts.ts';
 import type { CheckRow } from './results.ts';
 
 export function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): readonly CheckRow[] {
@@ -38,9 +38,12 @@ export function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyB
     source: `${limit?.source ?? 'no limit'}; mean of pressure times speed in the hardest segment`,
   };
   const wear = wearRow(arm, bearing, bushing, anywhere, headOf(one, named('wear life'), 's'), place);
-  if (bearing.speedLimit === null) return [row, wear];
+  const segments = turningSegments(duty, [one]);
+  const noted = (rows: readonly CheckRow[]) =>
+    rows.map((each) => (Number.isNaN(each.value) ? each : withNotes(each, segments)));
+  if (bearing.speedLimit === null) return noted([row, wear]);
   const speed = bushing.peakSpeed / bearing.speedLimit;
-  return [
+  return noted([
     row,
     {
       ...headOf(one, named('speed'), 'm/s'),
@@ -54,7 +57,7 @@ export function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyB
       source: bearing.source ?? 'limit of the bushing in the arm file',
     },
     wear,
-  ];
+  ]);
 }
 
 function pvLimit(arm: Arm, bearing: PlainBushing): { readonly value: number; readonly source: string } | null {

@@ -33,6 +33,8 @@ export interface SegmentResult {
   readonly duration: number | null;
   readonly samples: number;
   readonly joints: readonly JointSegment[];
+  /** Whether the smooth motion between the poses leaves the travel. */
+  readonly leavesTravel: boolean;
   readonly notes: readonly string[];
 }
 

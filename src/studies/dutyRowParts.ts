@@ -2,7 +2,7 @@
 import type { Arm } from '../arm/arm.ts';
 import { type Chain, WRENCH, wrenchToFile } from '../mechanics/chain.ts';
 import { REASONS } from './assessVerdict.ts';
-import type { DutyBearing } from './dutyResult.ts';
+import type { DutyBearing, DutyResult, SegmentResult } from './dutyResult.ts';
 import type { CheckRow, Verdict, Wrench } from './results.ts';
 
 /** `jointIndex` of rows that speak for the arm as a whole. */
@@ -85,6 +85,38 @@ export function judged(
   if (found > 1) return { utilisation: Math.max(found, certain), verdict: 'over', reason: null };
   if (certain <= 1) return { utilisation: certain, verdict: 'pass', reason: null };
   return { utilisation: certain, verdict: 'unassessed', reason: OPEN };
+}
+
+/** Segments in which one of `bearings` turns. */
+export function turningSegments(duty: DutyResult, bearings: readonly DutyBearing[]): readonly SegmentResult[] {
+  return duty.segments.filter(
+    (segment, s) => segment.share > 0 && bearings.some((one) => (one.segments[s]?.turning ?? 0) > 0),
+  );
+}
+
+/** Each note once; one that is not of all `segments` names the cases that it is of. */
+export function segmentNotes(segments: readonly SegmentResult[]): readonly string[] {
+  const all = new Set(segments.flatMap((segment) => segment.notes));
+  return [...all].map((note) => {
+    const mine = segments.filter((segment) => segment.notes.includes(note));
+    if (mine.length === segments.length) return note;
+    return `${note} (${[...new Set(mine.map((segment) => segment.case))].join(', ')})`;
+  });
+}
+
+/** A verdict with the words of the segments that it rests on: what is not the motion that was asked about does not pass. */
+export function withNotes<T extends Pick<CheckRow, 'verdict' | 'reason'>>(
+  row: T,
+  segments: readonly SegmentResult[],
+  more: readonly string[] = [],
+): T {
+  const words = [...(row.reason === null ? [] : [row.reason]), ...more, ...segmentNotes(segments)];
+  const doubtful = row.verdict === 'pass' && segments.some((segment) => segment.leavesTravel);
+  return {
+    ...row,
+    verdict: doubtful ? 'unassessed' : row.verdict,
+    reason: words.length > 0 ? words.join('; ') : null,
+  };
 }
 
 const OPEN =

@@ -3,10 +3,11 @@
  *
  *   - `life` of each rolling bearing, s of duty time at the reliability asked for. More is better: `value` is the life by the loads that
  *     were found, `bound` (where a segment may be anywhere in travel) a life that is reached for certain. Utilisation is the life asked for over
- *     the life that is certain: the share of the bearing that the time asked for wears. A pass keeps its warnings as its reason.
+ *     the life that is certain: the share of the bearing that the time asked for wears. The reason holds the warnings, and what
+ *     was taken of the segments in which the bearing turns. Beyond the formula, or by a path that leaves the travel, nothing passes.
  *   - Of each bushing `pv`, `speed` and `wear life`, of its flange too (`dutyBushingRows.ts`).
  *   - `system life` of the arm (`jointIndex` -1): the life that all rolling bearings reach together. Nothing in the file asks for one, so
- *     it is only reported.
+ *     it is only reported, and unassessed where a life that counts is beyond the formula or a path leaves the travel.
  *
  * `pose` and `wrench` are those of the hardest load met in the segment that wears most.
  */
@@ -26,7 +27,9 @@ import {
   missingRow,
   placeOf,
   share,
+  turningSegments,
   WHOLE_ARM,
+  withNotes,
 } from './dutyRowParts.ts';
 import type { CheckRow } from './results.ts';
 
@@ -59,11 +62,15 @@ function lifeRow(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): Ch
   const anywhere = duty.segments.some((segment) => segment.kind === 'anywhere');
   const certain = one.life.life;
   const found = anywhere ? (one.attainedLife?.life ?? Number.NaN) : certain;
-  const gap =
-    found === Number.POSITIVE_INFINITY ? (certain === found ? 0 : 1) : found > 0 ? (found - certain) / found : 0;
+  const gap = lifeGap(found, certain);
   const asked = target.value;
   const kind = target.given ? 'arm file' : `default: ${target.source}`;
-  const verdict = judged(share(asked, found), share(asked, certain));
+  const told = judged(share(asked, found), share(asked, certain));
+  // The bound may lie beyond the formula where no load found does; its life then proves nothing.
+  const beyond = one.life.beyondFormula || one.attainedLife?.beyondFormula === true;
+  const unsaid =
+    beyond && !one.warnings.includes(BEYOND) ? [`by the load that is certain not to be exceeded: ${BEYOND}`] : [];
+  const verdict = beyond && told.verdict === 'pass' ? { ...told, verdict: 'unassessed' as const } : told;
   const estimated = one.notes.includes(ESTIMATED);
   const reliability = `reliability ${duty.reliability}, a1 ${Number(one.life.a1.toPrecision(3))}`;
   return {
@@ -74,13 +81,19 @@ function lifeRow(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): Ch
     gap: anywhere ? gap : null,
     certified: anywhere ? gap <= CERTIFIED : null,
     allowable: asked,
-    ...verdict,
-    reason: verdict.reason ?? (one.warnings.length > 0 ? one.warnings.join('; ') : null),
+    ...withNotes(verdict, turningSegments(duty, [one]), [...unsaid, ...one.warnings]),
     source: `life asked for: ${kind}; ${reliability}${estimated ? `; ${ESTIMATED}` : ''}`,
   };
 }
 
+const BEYOND = sentence('load-beyond-life-formula');
 const ESTIMATED = sentence('C-estimated');
+
+/** Share of the life found that is not certain. */
+function lifeGap(found: number, certain: number): number {
+  if (found === Number.POSITIVE_INFINITY) return certain === found ? 0 : 1;
+  return found === 0 ? 0 : (found - certain) / found;
+}
 
 function systemRow(arm: Arm, duty: DutyResult): CheckRow {
   const head = systemHead(arm);
@@ -89,13 +102,23 @@ function systemRow(arm: Arm, duty: DutyResult): CheckRow {
     return missingRow(head, system.unassessed ?? 'the life could not be computed');
   }
   const anywhere = duty.segments.some((segment) => segment.kind === 'anywhere');
+  const counted = duty.bearings.filter((one) => one.life !== null);
+  const segments = turningSegments(duty, counted);
+  const stretched = counted.filter((one) => one.life?.beyondFormula || one.attainedLife?.beyondFormula);
+  const names = stretched.map((one) => `${one.joint} ${one.side}`).join(', ');
+  const doubtful = stretched.length > 0 || segments.some((segment) => segment.leavesTravel);
   return {
     ...missingRow(head, ''),
     value: anywhere ? system.attained : system.life,
     bound: anywhere ? system.life : null,
-    gap: null,
-    verdict: null,
-    reason: null,
+    gap: anywhere ? lifeGap(system.attained, system.life) : null,
+    // No search looks for the worst of all bearings together.
+    certified: anywhere ? false : null,
+    ...withNotes(
+      { verdict: doubtful ? ('unassessed' as const) : null, reason: null },
+      segments,
+      stretched.length > 0 ? [`of ${names}: ${BEYOND}`] : [],
+    ),
     source: `all ${system.bearings} rolling bearings together, reliability ${duty.reliability}; reported only: the file asks for the life of each bearing`,
   };
 }

@@ -48,6 +48,8 @@ export interface BearingLife {
   readonly slope: number;
   /** What was assumed. */
   readonly notes: readonly string[];
+  /** Whether a load is beyond what the formula holds for: the life is then only a guide. */
+  readonly beyondFormula: boolean;
   /** Where the formula is stretched: load beyond it, or too little to make the elements roll. */
   readonly warnings: readonly string[];
 }
@@ -73,7 +75,8 @@ export function bearingLife(
   const C0 = staticRating(bearing);
   const heaviest = Array.from(loads).reduce((most, P, i) => (turning[i]! > 0 ? Math.max(most, P) : most), 0);
   const most = isUnassessed(C0) ? Number.POSITIVE_INFINITY : C0.value;
-  const warnings = [...lifeNotes(C.value, most, heaviest), ...minimumLoadNotes(bearing, C.value, load.value)];
+  const beyond = lifeNotes(C.value, most, heaviest);
+  const warnings = [...beyond, ...minimumLoadNotes(bearing, C.value, load.value)];
   return {
     value: {
       load: load.value,
@@ -84,6 +87,7 @@ export function bearingLife(
       life: a1.value * basic,
       slope: weibullSlope(bearing.kind),
       notes: C.notes.map(sentence),
+      beyondFormula: beyond.length > 0,
       warnings: warnings.map(sentence),
     },
   };
