@@ -10,6 +10,7 @@ import type { Arm, Vec3 } from '../arm/arm.ts';
 import { isRingParts, jointParts } from '../capacity/index.ts';
 import { type Chain, type ChainCase, flattenArm } from '../mechanics/chain.ts';
 import { pointSets, sphereBounds, type TravelBounds } from '../mechanics/travelBounds.ts';
+import { CUBE } from './cubeDirections.ts';
 import { type JointGive, jointGive, type SidePlay } from './playJoint.ts';
 import { type SideMotion, sideMotions } from './playMotion.ts';
 import { reachBound } from './playReach.ts';
@@ -173,16 +174,6 @@ interface WorstTip {
   readonly pose: readonly number[];
   readonly tipForce: Vec3 | null;
 }
-
-/** The 26 directions to faces, edges and corners of a cube. */
-export const CUBE: readonly Vec3[] = [-1, 0, 1].flatMap((x) =>
-  [-1, 0, 1].flatMap((y) =>
-    [-1, 0, 1].flatMap((z): Vec3[] => {
-      const size = Math.hypot(x, y, z);
-      return size > 0 ? [[x / size, y / size, z / size]] : [];
-    }),
-  ),
-);
 
 /** The largest tip error that is found: best of the poses in every case, then climbed joint by joint. */
 function worstTip(chain: Chain, gives: readonly JointGive[], poses: Float64Array): WorstTip {

@@ -1,16 +1,18 @@
 /**
  * Where the load on a bearing comes to lie on the other side of its play: over poses spread through the travel, all cases together (the arm
- * goes from any of them to any other), and along the paths of the duty, one pose after another. The loads are those at rest without what a
- * case leaves free; a tip force that may point anywhere can turn any of them.
+ * goes from any of them to any other), and along the paths of the duty, one pose after another. The loads are those at rest. Over the
+ * travel a tip force that may point anywhere points each way of a set of directions; along the paths it is left out, and motion always.
  */
-import type { Arm } from '../arm/arm.ts';
+import type { Arm, Vec3 } from '../arm/arm.ts';
 import { radialNorms } from '../capacity/checks/jointParts.ts';
 import { motionAt, pathMotion } from '../capacity/duty/index.ts';
 import type { BearingSide, PairParts } from '../capacity/index.ts';
 import { LOAD_STRIDE, lostMotion, reversals } from '../capacity/play/index.ts';
 import { radialVector } from '../mechanics/bearingPair.ts';
-import { type Chain, WRENCH } from '../mechanics/chain.ts';
+import { type Chain, type ChainCase, WRENCH } from '../mechanics/chain.ts';
+import { hasFree } from '../mechanics/freeLoads.ts';
 import { poseScratch, staticLoads } from '../mechanics/newtonEuler.ts';
+import { CUBE } from './cubeDirections.ts';
 import type { JointGive } from './playJoint.ts';
 
 /** A pose of a case. */
@@ -26,6 +28,8 @@ export interface SideMotion {
   /** The journal's way between them, m. */
   readonly shift: number | null;
   readonly reverses: boolean;
+  /** Whether a case has something free, not all of which is looked at: without a reversal found the load may still change side. */
+  readonly free: boolean;
   readonly from: CasePose | null;
   readonly to: CasePose | null;
   /** Along the paths of the duty: where the load jumps to the other side, s after the path began. */
@@ -35,6 +39,8 @@ export interface SideMotion {
 
 /** A load below this share of the bearing's largest seats nothing. */
 const SEATS = 0.01;
+/** Of so many poses one is looked at in each direction of a free tip force. */
+const THINNED = 5;
 /** Looks between two poses of a path. */
 const BETWEEN = 8;
 const LONG_PATH = 5000;
@@ -48,21 +54,21 @@ export function sideMotions(
   poses: Float64Array,
 ): readonly SideMotion[] {
   return give.sides.map(({ side, clearance }): SideMotion => {
-    const none = { side, turn: null, shift: null, reverses: false, from: null, to: null, onPath: [] };
+    const free = chain.cases.some(hasFree);
+    const none = { side, turn: null, shift: null, reverses: false, free, from: null, to: null, onPath: [] };
     if ('unassessed' in clearance) return { ...none, unassessed: clearance.unassessed };
     const forms = radialNorms(parts, side);
-    const loads = travelHistory(chain, parts.joint, forms, poses);
+    const { loads, origin } = travelHistory(chain, parts.joint, forms, poses);
     const least = SEATS * largest(loads);
     const motion = lostMotion(loads, clearance.value.play.to, least);
     const onPath = pathReversals(arm, chain, parts.joint, forms, least);
     if ('unassessed' in motion) return { ...none, onPath, unassessed: motion.unassessed };
-    const count = poses.length / chain.n;
     const place = (index: number): CasePose => {
-      const at = chain.n * (index % count);
-      return { case: chain.cases[Math.floor(index / count)]!.name, pose: [...poses.subarray(at, at + chain.n)] };
+      const { load, pose } = origin(index);
+      return { case: load.name, pose: [...poses.subarray(chain.n * pose, chain.n * (pose + 1))] };
     };
     const { turn, shift, reverses, fromPose, toPose } = motion.value;
-    return { side, turn, shift, reverses, from: place(fromPose), to: place(toPose), onPath, unassessed: null };
+    return { side, turn, shift, reverses, free, from: place(fromPose), to: place(toPose), onPath, unassessed: null };
   });
 }
 
@@ -74,23 +80,40 @@ function largest(loads: Float64Array): number {
 
 type Forms = Parameters<typeof radialVector>[0];
 
-/** Case after case, pose after pose. */
-function travelHistory(chain: Chain, joint: number, forms: Forms, poses: Float64Array): Float64Array {
+interface TravelHistory {
+  readonly loads: Float64Array;
+  /** Case, and number of the pose, of an entry of `loads`. */
+  readonly origin: (index: number) => { readonly load: ChainCase; readonly pose: number };
+}
+
+/** Case after case, direction of a free tip force after direction, pose after pose. */
+function travelHistory(chain: Chain, joint: number, forms: Forms, poses: Float64Array): TravelHistory {
   const { n } = chain;
   const count = poses.length / n;
   const w = new Float64Array(WRENCH * n);
   const scratch = poseScratch(n);
-  const loads = new Float64Array(LOAD_STRIDE * count * chain.cases.length);
+  // With many directions fewer poses each.
+  const ways = chain.cases.flatMap((load) =>
+    (load.force === 'any' ? [null, ...CUBE] : [null]).map((tipForce: Vec3 | null) => ({
+      load,
+      tipForce,
+      step: tipForce ? THINNED : 1,
+    })),
+  );
+  const entries = ways.flatMap(({ load, step }) =>
+    Array.from({ length: Math.ceil(count / step) }, (_, k) => ({ load, pose: k * step })),
+  );
+  const loads = new Float64Array(LOAD_STRIDE * entries.length);
   let at = 0;
-  for (const load of chain.cases) {
-    for (let k = 0; k < count; k++) {
-      staticLoads(chain, load, poses.subarray(n * k, n * k + n), w, scratch);
+  for (const { load, tipForce, step } of ways) {
+    for (let k = 0; k < count; k += step) {
+      staticLoads(chain, load, poses.subarray(n * k, n * k + n), w, scratch, tipForce);
       const [x, y] = radialVector(forms, w, WRENCH * joint);
       loads[at++] = x;
       loads[at++] = y;
     }
   }
-  return loads;
+  return { loads, origin: (index) => entries[index]! };
 }
 
 function pathReversals(

@@ -55,16 +55,23 @@ function jointRows(arm: Arm, one: JointPlayResult): readonly CheckRow[] {
   const lost = one.motion.map((motion): CheckRow => {
     const name = { ...head, bearing: motion.side, check: 'lost motion', unit: 'm' };
     if (motion.shift === null || !motion.from) return missing(name, motion.unassessed ?? 'the play is not known');
-    const words = motion.reverses ? 'the load changes side within the travel' : 'the load keeps its side';
+    const words = motion.reverses ? CHANGES : motion.free ? NOT_FOUND : KEEPS;
     return {
       ...reported({ ...name, value: motion.shift }),
       case: motion.from.case,
       pose: motion.from.pose,
+      reason: motion.free ? LEFT_OUT : null,
       source: arm.duty ? `${words}; along the duty it jumps over ${motion.onPath.length} times` : words,
     };
   });
   return [...rows, ...lost];
 }
+
+const KEEPS = 'the load keeps its side';
+const CHANGES = 'the load changes side within the travel';
+const NOT_FOUND = 'no pose looked at changes the side of the load';
+const LEFT_OUT =
+  'at rest: what a case leaves free is left out, save for some directions of a tip force `any`, and may move the load to the other side';
 
 const NOT_TOGETHER =
   'no pose found exceeds the allowable, but the most of every joint added up does: they need not occur together';

@@ -15,8 +15,9 @@ import { newPoseLoad, poseLoad, poseLoadScratch } from '../mechanics/freeLoadsPo
 import { poseScratch, tipReach } from '../mechanics/newtonEuler.ts';
 import { looseForms } from './assessFree.ts';
 import { judge } from './assessVerdict.ts';
+import { CUBE } from './cubeDirections.ts';
 import { missingRow, WHOLE_ARM } from './dutyRowParts.ts';
-import { armGives, CUBE } from './play.ts';
+import { armGives } from './play.ts';
 import type { JointGive, JointSpring } from './playJoint.ts';
 import { lawAt } from './playReach.ts';
 import { reported } from './playRows.ts';

@@ -343,6 +343,49 @@ describe('lost motion', () => {
     expect(Math.abs(side!.from!.pose[0]! - side!.to!.pose[0]!)).toBeGreaterThan(2);
   });
 
+  it('a tip force that may point anywhere takes the journal right across where it outweighs what holds it, and not where it does not', () => {
+    const pushed = (force_N: number) => {
+      const { arm, chain } = ready(
+        spit({
+          bearing: bearing(18),
+          cases: [{ name: 'own weight', tip_force: { force_N, direction: 'any' } }],
+        }),
+      );
+      const play = playStudy(arm, chain);
+      const row = playRows(arm, play).find((one) => one.check === 'lost motion')!;
+      return { side: play.joints[0]!.motion[0]!, row };
+    };
+    const strong = pushed(5000);
+    expect(strong.side).toMatchObject({ reverses: true, free: true });
+    expect(strong.side.shift! / (18 * MICRON)).toBeCloseTo(1, 4);
+    expect(strong.row.source).toContain('changes side');
+    const weak = pushed(500);
+    expect(weak.side.reverses).toBe(false);
+    // 500 N across 2000 N at most: asin(1/4) either way; 45° up and across, of the directions looked at, next to it.
+    expect(weak.side.turn!).toBeLessThanOrEqual(2 * Math.asin(0.25) + 1e-9);
+    expect(weak.side.turn!).toBeGreaterThan(1.9 * Math.atan(0.25));
+    for (const { row } of [strong, weak]) expect(row.reason).toContain('left out');
+    expect(weak.row.source).not.toContain('keeps its side');
+  });
+
+  it('with motion in a case never says that the load keeps its side', () => {
+    const lost = (motion: boolean) => {
+      const moving = motion ? { motion: { speed_deg_s: [100], accel_deg_s2: [500] } } : {};
+      const inertia_kg_m2 = { xx: 1, yy: 1, zz: 1, xy: 0, xz: 0, yz: 0 };
+      const link = { name: 'roast', mass_kg: 200, centre_mm: [0, 0, 0] as [number, number, number], inertia_kg_m2 };
+      const cases = [{ name: 'own weight', ...moving }];
+      const { arm, chain } = ready(spit({ bearing: bearing(18), cases, joint: { link } }));
+      return playRows(arm, playStudy(arm, chain)).filter((one) => one.check === 'lost motion');
+    };
+    expect(lost(true).length).toBe(2);
+    for (const row of lost(true)) {
+      expect(row.source).not.toContain('keeps its side');
+      expect(row.reason).toContain('left out');
+      expect(row.verdict).toBeNull();
+    }
+    for (const row of lost(false)) expect([row.source, row.reason]).toEqual(['the load keeps its side', null]);
+  });
+
   it('along a path: where a load as large as the weight and fixed in the link passes 180°', () => {
     // The load is 2 W cos(q/2) at the angle q/2: at 180° it is nought and then points the other way.
     const file = spit({
