@@ -23,6 +23,8 @@ export interface WorstState {
   readonly of: ArmFile | null;
 }
 
+const GRID_ONLY = 'within the limit at the poses of the grid; not proved yet between them';
+
 const NOTHING: WorstState = { rows: undefined, searched: undefined, of: null };
 
 export const useWorst = create<WorstState>(() => NOTHING);
@@ -41,8 +43,8 @@ function joined(found: CheckRow, proven: CheckRow | undefined, gap: number): Che
 }
 
 /**
- * Rows of a sweep joined to those of a proof (of the same arm and cases; either may be missing), each with its verdict. While cases
- * are `waiting` to be swept, what the grid found passes nothing.
+ * Rows of a sweep joined to those of a proof (of the same arm and cases; either may be missing), each with its verdict. What the grid found passes
+ * nothing by itself: between its poses there may be worse.
  */
 export function worstRows(
   sheet: ArmOnSheet,
@@ -63,8 +65,12 @@ export function worstRows(
     ),
   );
   const honest = judged.map((row) =>
-    row.bound === null && row.verdict === 'pass' && waiting.length > 0
-      ? { ...row, verdict: 'unassessed' as const, reason: `not swept yet: ${waiting.join(', ')}` }
+    row.bound === null && row.verdict === 'pass'
+      ? {
+          ...row,
+          verdict: 'unassessed' as const,
+          reason: waiting.length > 0 ? `not swept yet: ${waiting.join(', ')}` : GRID_ONLY,
+        }
       : row,
   );
   const leftOut = sweep?.leftOut.map((row) => {
