@@ -36,8 +36,8 @@ export function rowObject(row: CheckRow): Json {
           allowable: row.allowable,
           utilisation: row.utilisation,
           verdict: row.verdict,
-          ...(row.reason ? { reason: row.reason } : {}),
         }),
+    ...(row.reason ? { reason: row.reason } : {}),
     ...(row.source ? { source: row.source } : {}),
   };
 }

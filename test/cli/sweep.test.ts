@@ -140,6 +140,19 @@ describe('armload sweep', () => {
     expect(complaints(one.ran).join()).toContain('belong to no single case');
   });
 
+  it('says what a row leaves out where it has no verdict too', async () => {
+    const { document } = await sweep(model('two-link'), '--samples', '2');
+    const lost = document.joints.flatMap(({ checks }) => checks).filter((row) => row.check === 'lost motion');
+    expect(lost.length).toBe(4);
+    for (const row of lost) {
+      expect(row).not.toHaveProperty('verdict');
+      expect(row.reason).toContain('what a case leaves free is left out');
+    }
+    const system = (document.whole_arm as Row[]).find((row) => row.check === 'system life')!;
+    expect(system).not.toHaveProperty('verdict');
+    expect(system.reason).toContain('point masses');
+  });
+
   it('is 1 where a life is too short and nothing else is over', async () => {
     const file = modelFile('two-link');
     const short = { ...file, targets: { ...file.targets, life_h: 1e9 } };
