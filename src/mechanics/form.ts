@@ -88,6 +88,11 @@ export function checkValue(check: CheckForm, w: Numbers, at: number): number {
   return value;
 }
 
+/** Whether a form holds only for some drive torques. */
+export function isRanged(f: Form): boolean {
+  return f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY;
+}
+
 /** A check whose forms hold at every torque: never below the check itself. */
 export function anyTorque(check: CheckForm): CheckForm {
   const forms = check.forms.map((f) => ({

@@ -3,40 +3,15 @@
  * read along and the speeds: a bound that nothing the arm can do within travel and limits exceeds, and an attained value with its pose
  * and rates. Boxes are bounded by `motionBox.ts`, and cut where their bound owes most.
  */
-import { seededRandom } from '../math/random.ts';
 import type { Flat, Numbers } from '../math/vector.ts';
-import type { BranchBoundState } from './branchBound.ts';
-import { BoxQueue } from './branchBoundQueue.ts';
+import { BoxSearch, type BoxSearchOptions, type BoxSearchState } from './boxSearch.ts';
 import type { Chain, ChainCase } from './chain.ts';
-import { anyTorque, type CheckForm, type Form, form } from './form.ts';
-import { freePart, newFreeWorst } from './freeLoads.ts';
+import { anyTorque, type CheckForm, type Form, isRanged } from './form.ts';
 import { MotionBox } from './motionBox.ts';
-import { nothingBound } from './motionNothing.ts';
 import { standsOff } from './motionTerms.ts';
 import { Polish } from './polish.ts';
 import { sameAllRound } from './roundForms.ts';
 
-export interface MotionSearchOptions {
-  /** Relative gap asked for: (bound - found)/bound. */
-  readonly gap: number;
-  /** Poses to start from, [n] rad each. */
-  readonly seeds?: readonly Numbers[];
-  /** Most boxes kept; beyond it the search stops with the bound it has. */
-  readonly most?: number;
-}
-
-interface Piece {
-  readonly form: Form;
-  readonly box: MotionBox;
-  /** Bounds of the torque and of minus the torque, for forms that hold in a range of it. */
-  readonly torque: MotionBox | null;
-}
-
-const TORQUE = form({ P: [[0, 0, 0, 0, 0, 1]] });
-/** What lies below this share of the ceiling counts as nothing. */
-const NOTHING = 1e-9;
-/** What a pose may give for that to be shown by poses. */
-const SMALL = 1e-13;
 const KEPT = 1 << 16;
 const RANDOM_POSES = 24;
 const CLIMBS = 2;
@@ -48,91 +23,27 @@ const AROUND = 16;
 const UPRIGHT = 6;
 const SHRINKS = 4;
 
-export class MotionSearch {
-  found = Number.NEGATIVE_INFINITY;
-  readonly pose: Float64Array;
-  readonly worst;
-  /** Boxes bounded so far. */
-  boxes = 0;
-  readonly ceiling: number;
-  private readonly chain: Chain;
-  private readonly load: ChainCase;
-  private readonly gap: number;
-  private readonly pieces: readonly Piece[];
-  private readonly climber: Polish;
+export class MotionSearch extends BoxSearch<MotionBox> {
   /** Climbs without the ranges of the torque, which is far quicker; null where the check has none. */
   private readonly scout: Polish | null;
   private whole = false;
-  private readonly queue: BoxQueue;
-  private readonly low: Flat;
-  private readonly high: Flat;
-  private readonly keptLow: Flat;
-  private readonly keptHigh: Flat;
-  private readonly trial: Flat;
-  /** Bound of boxes closed because the gap asked for allows them. */
-  private closed = Number.NEGATIVE_INFINITY;
 
-  constructor(chain: Chain, load: ChainCase, check: CheckForm, options: MotionSearchOptions) {
-    const { n } = chain;
-    this.chain = chain;
-    this.load = load;
-    this.gap = options.gap;
-    this.pose = new Float64Array(n);
-    this.worst = newFreeWorst(n);
-    this.climber = new Polish(chain, load, check);
-    const ranged = check.forms.some(
-      (f) => f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY,
-    );
-    this.scout = ranged && n > CLIMBED_WHOLE ? new Polish(chain, load, anyTorque(check)) : null;
+  constructor(chain: Chain, load: ChainCase, check: CheckForm, options: BoxSearchOptions) {
+    super(chain, load, check, options.gap);
+    const scouted = check.forms.some(isRanged) && chain.n > CLIMBED_WHOLE;
+    this.scout = scouted ? new Polish(chain, load, anyTorque(check)) : null;
     // read in the link's frame, what stands off the axis stands still; what is balanced about it is better left to turn
     const offAxis = standsOff(chain, load, check.joint) > OFF_AXIS;
     const box = (f: Form) => new MotionBox(chain, load, check.joint, f, offAxis && sameAllRound(f));
-    this.pieces = check.forms.map((f) => ({
-      form: f,
-      box: box(f),
-      torque: f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY ? box(TORQUE) : null,
-    }));
-    this.ceiling = Math.max(...this.pieces.map((piece) => piece.box.ceiling()));
-    const { size } = this.pieces[0]!.box;
-    this.queue = new BoxQueue(size, options.most ?? KEPT);
-    this.low = new Float64Array(size);
-    this.high = new Float64Array(size);
-    this.keptLow = new Float64Array(size);
-    this.keptHigh = new Float64Array(size);
-    this.trial = new Float64Array(n);
+    this.lay(check.forms, box, options.most ?? KEPT);
     for (const seed of (options.seeds ?? []).slice(0, this.scout ? 1 : undefined)) this.offer(seed);
-    this.firstPoses();
-    const nothing =
-      this.found <= NOTHING * this.ceiling ? nothingBound(chain, load, check, SMALL * this.ceiling) : Number.NaN;
-    if (nothing <= NOTHING * this.ceiling) this.closed = nothing;
-    else this.firstBoxes();
+    this.firstPoses(RANDOM_POSES, CLIMBS, this.scout ?? this.climber);
+    this.begin(check);
   }
 
-  get bound(): number {
-    const bound = Math.max(this.found, this.closed, this.queue.top);
-    return Number.isNaN(this.found) ? Number.POSITIVE_INFINITY : bound;
-  }
-
-  get done(): boolean {
-    return this.queue.full || !(this.queue.top > this.enough());
-  }
-
-  state(): BranchBoundState {
-    return {
-      found: this.found,
-      bound: this.bound,
-      pose: Float64Array.from(this.pose),
-      free: freePart(this.load, this.worst),
-      wrench: Float64Array.from(this.worst.wrench),
-      done: this.done,
-    };
-  }
-
-  /** Works on until `boxes` more boxes are bounded or the gap is closed. */
-  step(boxes: number): void {
+  override step(boxes: number): BoxSearchState {
     this.climbWhole();
-    const until = this.boxes + boxes;
-    while (this.boxes < until && !this.done) this.cut();
+    return super.step(boxes);
   }
 
   /** Once, from the best pose that a climb without the ranges of the torque came to. */
@@ -143,48 +54,17 @@ export class MotionSearch {
     this.take(this.climber.climb(this.trial));
   }
 
-  /** Values up to this are close enough to `found`. */
-  private enough(): number {
-    const { found } = this;
-    return Math.max(found > 0 ? found / (1 - 0.999 * this.gap) : found, Math.max(found, 0) + NOTHING * this.ceiling);
-  }
-
-  private offer(start: Numbers): void {
+  protected override offer(start: Numbers): void {
+    if (!this.scout) {
+      super.offer(start);
+      return;
+    }
     for (let k = 0; k < this.chain.n; k++) this.trial[k] = start[k]!;
-    let value = Number.NaN;
-    if (this.scout) {
-      this.scout.climb(this.trial);
-      value = this.climber.value(this.trial);
-    } else value = this.climber.climb(this.trial);
-    this.take(value);
+    this.scout.climb(this.trial);
+    this.take(this.climber.value(this.trial));
   }
 
-  /** Keeps the pose in `trial` with its motion where its value is the highest yet. */
-  private take(value: number): void {
-    // what is not a number stays: it has no bound
-    if (value <= this.found) return;
-    this.found = value;
-    this.pose.set(this.trial);
-    const { worst } = this.climber;
-    this.worst.value = value;
-    this.worst.tipForce.set(worst.tipForce);
-    this.worst.speed.set(worst.speed);
-    this.worst.accel.set(worst.accel);
-    this.worst.wrench.set(worst.wrench);
-  }
-
-  private firstPoses(): void {
-    const random = seededRandom(1);
-    const { from, to } = this.chain;
-    const poses = Array.from({ length: RANDOM_POSES }, () => {
-      const pose = Float64Array.from(from, (low, k) => random.between(low, to[k]!));
-      return { pose, value: (this.scout ?? this.climber).value(pose) };
-    });
-    poses.sort((a, b) => b.value - a.value);
-    for (const { pose } of poses.slice(0, CLIMBS)) this.offer(pose);
-  }
-
-  private firstBoxes(): void {
+  protected firstBoxes(): void {
     const { pieces } = this;
     pieces.forEach((piece, index) => {
       const { rows, P, c } = piece.form;
@@ -207,15 +87,10 @@ export class MotionSearch {
   }
 
   private firstBox(index: number, a: number, b: number, c: number, d: number): void {
-    const { chain, load, low, high } = this;
-    const { n } = chain;
+    const { load, low, high } = this;
+    const { n } = this.chain;
     const { speeds } = this.pieces[index]!.box;
-    low.set(chain.from);
-    high.set(chain.to);
-    low[n] = a;
-    high[n] = b;
-    low[n + 1] = c;
-    high[n + 1] = d;
+    this.setArc(a, b, c, d);
     for (let k = 0; k < n; k++) {
       const fast = load.speed && load.speed[k]! > 0;
       low[speeds + k] = fast ? -1 : 0;
@@ -224,28 +99,11 @@ export class MotionSearch {
     this.assess(index, Number.POSITIVE_INFINITY);
   }
 
-  /** Cuts the box of the largest bound in two. */
-  private cut(): void {
-    const { queue, low, high, keptLow, keptHigh } = this;
-    const ceiling = queue.top;
-    const index = queue.pop(low, high);
-    const k = queue.cutAt;
-    const middle = (low[k]! + high[k]!) / 2;
-    keptLow.set(low);
-    keptHigh.set(high);
-    high[k] = middle;
-    this.assess(index, ceiling);
-    low.set(keptLow);
-    high.set(keptHigh);
-    low[k] = middle;
-    this.assess(index, ceiling);
-  }
-
   /**
    * Bounds the box in `low`, `high`, a part of one of bound `ceiling`, shrinks it while that helps, and keeps it where it may hold the
    * worst.
    */
-  private assess(index: number, ceiling: number): void {
+  protected assess(index: number, ceiling: number): void {
     const { low, high, queue, chain } = this;
     const piece = this.pieces[index]!;
     const { box } = piece;
@@ -290,34 +148,12 @@ export class MotionSearch {
   }
 
   private tryMiddle(): void {
-    const { trial, low, high, chain } = this;
-    for (let k = 0; k < chain.n; k++) trial[k] = (low[k]! + high[k]!) / 2;
-    if (this.climber.value(trial) > this.found) this.offer(Float64Array.from(trial));
+    this.setMiddle();
+    this.tryTrial();
   }
 
-  /** Whether the form's torque range meets what the torque can be over the box. */
-  private torqueCanBe(piece: Piece): boolean {
-    const { low, high } = this;
-    const { n } = this.chain;
-    const { form: f, torque } = piece;
-    const [a, b, c, d] = [low[n]!, high[n]!, low[n + 1]!, high[n + 1]!];
-    low[n + 1] = 0;
-    high[n + 1] = 0;
-    let can = true;
-    for (const [angle, limit] of [
-      [0, f.torqueFrom],
-      [Math.PI, -f.torqueTo],
-    ] as const) {
-      if (!Number.isFinite(limit)) continue;
-      low[n] = angle;
-      high[n] = angle;
-      if (torque!.bound(low, high) < limit) can = false;
-    }
-    low[n] = a;
-    high[n] = b;
-    low[n + 1] = c;
-    high[n + 1] = d;
-    return can;
+  protected torqueBound(torque: MotionBox): number {
+    return torque.bound(this.low, this.high);
   }
 }
 

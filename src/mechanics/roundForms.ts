@@ -4,12 +4,12 @@
  */
 import type { Numbers } from '../math/vector.ts';
 import { WRENCH } from './chain.ts';
-import type { Form } from './form.ts';
+import { type Form, isRanged } from './form.ts';
 
 /** Whether a form keeps its value when the load turns about the z axis: rows that turn into each other, or that look along z. */
 export function sameAllRound(f: Form): boolean {
   const { P, c, l } = f;
-  if (!isAlong(l, 0) || f.torqueFrom > Number.NEGATIVE_INFINITY || f.torqueTo < Number.POSITIVE_INFINITY) return false;
+  if (!isAlong(l, 0) || isRanged(f)) return false;
   const pair = f.rows >= 2 && !(isAlong(P, 0) && isAlong(P, WRENCH));
   for (let r = pair ? 2 : 0; r < f.rows; r++) if (!isAlong(P, WRENCH * r)) return false;
   if (!pair) return true;

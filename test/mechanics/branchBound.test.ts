@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import type { Arm } from '../../src/arm/arm.ts';
 import { seededRandom } from '../../src/math/random.ts';
-import { BranchBound, type BranchBoundState } from '../../src/mechanics/branchBound.ts';
+import type { BoxSearchState } from '../../src/mechanics/boxSearch.ts';
+import { BranchBound } from '../../src/mechanics/branchBound.ts';
 import { type Chain, flattenArm } from '../../src/mechanics/chain.ts';
 import { type CheckForm, checkValue } from '../../src/mechanics/form.ts';
 import { freeScratch, newFreeWorst, worstOverFree } from '../../src/mechanics/freeLoads.ts';
@@ -45,7 +46,7 @@ function picked(arm: Arm, chain: Chain, seed: number): CheckForm[] {
 }
 
 /** The value the plain engine gives at the state's pose with its free parts. */
-function attained(chain: Chain, check: CheckForm, state: BranchBoundState): number {
+function attained(chain: Chain, check: CheckForm, state: BoxSearchState): number {
   const loads = new Float64Array(6 * chain.n);
   staticLoads(chain, chain.cases[0]!, state.pose, loads, poseScratch(chain.n), state.free?.tipForce ?? null);
   return checkValue(check, loads, 6 * check.joint);
