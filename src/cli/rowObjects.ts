@@ -1,7 +1,7 @@
 /** Check rows in the contract's JSON shape, and the exit code they ask for. */
 import { degrees } from '../report/shown.ts';
-import { WHOLE_ARM } from '../studies/dutyRowParts.ts';
 import { type CheckRow, isMissing, moreIsBetter } from '../studies/results.ts';
+import { WHOLE_ARM } from '../studies/rowsWithoutPose.ts';
 import { fromSI } from '../units/unit.ts';
 import { EXIT, type ExitCode } from './exit.ts';
 import { warn } from './output.ts';

@@ -12,6 +12,7 @@ import { newPoseLoad, type PoseLoad, poseLoad, poseLoadScratch } from '../mechan
 import { looseForms, type QuickScratch, quickScratch, worstAndBound } from './assessFree.ts';
 import { judge, type Scope } from './assessVerdict.ts';
 import { type CheckRow, isMissing, type Wrench } from './results.ts';
+import { NOWHERE } from './rowsWithoutPose.ts';
 
 /** What an arm's parts can take, prepared once for any number of poses and rows. It holds functions: a worker makes its own. */
 export interface ArmCapacity {
@@ -190,7 +191,6 @@ function joined(chain: Chain, row: CheckRow, check: CapacityCheck, options: Join
 
 /** A row for every check that cannot be computed at all. What only a duty can tell has rows of its own (`dutyRows`). */
 function missingRows(arm: Arm, checks: readonly CapacityCheck[]): readonly CheckRow[] {
-  const none: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [Number.NaN, Number.NaN, Number.NaN] };
   const missing = checks.filter((check) => !check.form && !check.atPose);
   return missing.map((check) => ({
     ...head(arm, check),
@@ -198,7 +198,7 @@ function missingRows(arm: Arm, checks: readonly CapacityCheck[]): readonly Check
     case: '',
     pose: [],
     free: null,
-    wrench: none,
+    wrench: NOWHERE,
     allowable: null,
     utilisation: null,
     verdict: 'unassessed',

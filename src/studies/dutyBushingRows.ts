@@ -9,8 +9,9 @@ import { wearLife } from '../capacity/plain/index.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import type { Chain } from '../mechanics/chain.ts';
 import type { BushingDuty, DutyBearing, DutyResult } from './dutyResult.ts';
-import { CERTIFIED, headOf, judged, missingRow, placeOf, share, turningSegments, withNotes } from './dutyRowParts.ts';
+import { CERTIFIED, headOf, judged, placeOf, share, turningSegments, withNotes } from './dutyRowParts.ts';
 import type { CheckRow } from './results.ts';
+import { missingRow } from './rowsWithoutPose.ts';
 
 export function bushingRows(arm: Arm, chain: Chain, duty: DutyResult, one: DutyBearing): readonly CheckRow[] {
   const named = (check: string) => (one.face === 'flange' ? `flange ${check}` : check);

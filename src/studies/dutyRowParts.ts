@@ -4,32 +4,7 @@ import { type Chain, WRENCH, wrenchToFile } from '../mechanics/chain.ts';
 import { REASONS } from './assessVerdict.ts';
 import type { DutyBearing, DutyResult, SegmentResult } from './dutyResult.ts';
 import type { CheckRow, Verdict, Wrench } from './results.ts';
-
-/** `jointIndex` of rows that speak for the arm as a whole. */
-export const WHOLE_ARM = -1;
-
-const NOWHERE: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [Number.NaN, Number.NaN, Number.NaN] };
-export type Head = Pick<CheckRow, 'joint' | 'jointIndex' | 'bearing' | 'check' | 'unit'>;
-
-/** A row without a value, unassessed for `reason`. */
-export function missingRow(head: Head, reason: string): CheckRow {
-  return {
-    ...head,
-    value: Number.NaN,
-    case: '',
-    pose: [],
-    free: null,
-    wrench: NOWHERE,
-    bound: null,
-    gap: null,
-    certified: null,
-    allowable: null,
-    utilisation: null,
-    verdict: 'unassessed',
-    reason,
-    source: null,
-  };
-}
+import type { Head } from './rowsWithoutPose.ts';
 
 export function headOf(one: DutyBearing, check: string, unit: string): Head {
   return { joint: one.joint, jointIndex: one.jointIndex, bearing: one.side, check, unit };

@@ -18,20 +18,9 @@ import type { Chain } from '../mechanics/chain.ts';
 import { dutyGaps } from './assessDuty.ts';
 import { bushingRows } from './dutyBushingRows.ts';
 import type { DutyBearing, DutyResult } from './dutyResult.ts';
-import {
-  CERTIFIED,
-  type Head,
-  hardest,
-  headOf,
-  judged,
-  missingRow,
-  placeOf,
-  share,
-  turningSegments,
-  WHOLE_ARM,
-  withNotes,
-} from './dutyRowParts.ts';
+import { CERTIFIED, hardest, headOf, judged, placeOf, share, turningSegments, withNotes } from './dutyRowParts.ts';
 import type { CheckRow } from './results.ts';
+import { type Head, missingRow, WHOLE_ARM } from './rowsWithoutPose.ts';
 
 const NO_DUTY = 'no duty in the file: fill in `duty`';
 

@@ -7,11 +7,11 @@ import { isRingParts, jointParts } from '../capacity/index.ts';
 import type { Chain } from '../mechanics/chain.ts';
 import { fatigueRows } from './assessFatigue.ts';
 import { dutyStudy } from './duty.ts';
-import { missingRow, WHOLE_ARM } from './dutyRowParts.ts';
 import { dutyRows } from './dutyRows.ts';
 import { playStudy } from './play.ts';
 import { playRows } from './playRows.ts';
 import type { CheckRow } from './results.ts';
+import { missingRow, WHOLE_ARM } from './rowsWithoutPose.ts';
 
 export type LastingPart = 'duty' | 'fatigue' | 'play';
 

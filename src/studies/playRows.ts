@@ -7,36 +7,9 @@
 import type { Arm } from '../arm/arm.ts';
 import { targetsOf } from '../capacity/targets.ts';
 import { judge, REASONS } from './assessVerdict.ts';
-import { WHOLE_ARM } from './dutyRowParts.ts';
 import type { JointPlayResult, PlayResult } from './play.ts';
-import type { CheckRow, Wrench } from './results.ts';
-
-const NOWHERE: Wrench = { force: [Number.NaN, Number.NaN, Number.NaN], moment: [Number.NaN, Number.NaN, Number.NaN] };
-
-type Head = Pick<CheckRow, 'joint' | 'jointIndex' | 'bearing' | 'check' | 'unit' | 'value'>;
-
-/** A row that says a value and holds it against nothing. */
-export function reported(head: Head): CheckRow {
-  return {
-    ...head,
-    case: '',
-    pose: [],
-    free: null,
-    wrench: NOWHERE,
-    bound: null,
-    gap: null,
-    certified: null,
-    allowable: null,
-    utilisation: null,
-    verdict: null,
-    reason: null,
-    source: null,
-  };
-}
-
-function missing(head: Omit<Head, 'value'>, reason: string): CheckRow {
-  return { ...reported({ ...head, value: Number.NaN }), verdict: 'unassessed', reason };
-}
+import type { CheckRow } from './results.ts';
+import { missingRow, reported, WHOLE_ARM } from './rowsWithoutPose.ts';
 
 /** Rows of a play study: joints from ground to tip, then the tip. */
 export function playRows(arm: Arm, play: PlayResult): readonly CheckRow[] {
@@ -50,11 +23,11 @@ function jointRows(arm: Arm, one: JointPlayResult): readonly CheckRow[] {
   const notes = one.notes.length > 0 ? one.notes.join('; ') : null;
   const rows =
     one.tilt === null
-      ? [missing(tilt, reason ?? 'the play is not known')]
+      ? [missingRow(tilt, reason ?? 'the play is not known')]
       : [{ ...reported({ ...tilt, value: one.tilt }), source: notes }];
   const lost = one.motion.map((motion): CheckRow => {
     const name = { ...head, bearing: motion.side, check: 'lost motion', unit: 'm' };
-    if (motion.shift === null || !motion.from) return missing(name, motion.unassessed ?? 'the play is not known');
+    if (motion.shift === null || !motion.from) return missingRow(name, motion.unassessed ?? 'the play is not known');
     const words = motion.reverses ? CHANGES : motion.free ? NOT_FOUND : KEEPS;
     return {
       ...reported({ ...name, value: motion.shift }),
@@ -80,7 +53,7 @@ function tipRow(arm: Arm, { joints, tip }: PlayResult): CheckRow {
   const head = { joint: arm.name, jointIndex: WHOLE_ARM, bearing: null, check: 'tip error', unit: 'm' };
   if (tip.found === null || tip.bound === null) {
     const open = joints.flatMap((one) => one.unassessed.map((words) => `${one.joint}: ${words}`));
-    return missing(head, open.join('; '));
+    return missingRow(head, open.join('; '));
   }
   const target = targetsOf(arm).tipError;
   const unassessed = target.value === null ? target.source : null;

@@ -16,6 +16,7 @@ import type { JobPool } from '../mechanics/job.ts';
 import { loadChecks } from '../mechanics/loadChecks.ts';
 import { poseScratch, staticLoads } from '../mechanics/newtonEuler.ts';
 import type { CheckRow, SweepResult } from './results.ts';
+import { NOWHERE } from './rowsWithoutPose.ts';
 
 export interface SweepOptions {
   readonly pool: JobPool;
@@ -90,11 +91,6 @@ async function runSweep(plan: SweepPlan, options: SweepOptions): Promise<SweepMe
   return merge;
 }
 
-const NO_WRENCH = {
-  force: [Number.NaN, Number.NaN, Number.NaN],
-  moment: [Number.NaN, Number.NaN, Number.NaN],
-} as const;
-
 function caseRow(plan: SweepPlan, merge: SweepMerge, c: number, k: number): CheckRow {
   const { chain, grid, checks } = plan;
   const check = checks[c]!;
@@ -116,7 +112,7 @@ function caseRow(plan: SweepPlan, merge: SweepMerge, c: number, k: number): Chec
   };
   if (index < 0) {
     const reason = 'the sweep was stopped before any pose was looked at';
-    return { ...common, value: Number.NaN, pose: [], free: null, wrench: NO_WRENCH, verdict: 'unassessed', reason };
+    return { ...common, value: Number.NaN, pose: [], free: null, wrench: NOWHERE, verdict: 'unassessed', reason };
   }
   const at = valueAt(chain, grid, check, k, index);
   const file = new Float64Array(WRENCH);

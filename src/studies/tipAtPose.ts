@@ -16,13 +16,12 @@ import { poseScratch, tipReach } from '../mechanics/newtonEuler.ts';
 import { looseForms } from './assessFree.ts';
 import { judge } from './assessVerdict.ts';
 import { CUBE } from './cubeDirections.ts';
-import { missingRow, WHOLE_ARM } from './dutyRowParts.ts';
 import { armGives } from './play.ts';
 import type { JointGive, JointSpring } from './playJoint.ts';
 import { lawAt } from './playReach.ts';
-import { reported } from './playRows.ts';
 import { type TipAtPose, TipErrors } from './playTip.ts';
 import type { CheckRow } from './results.ts';
+import { missingRow, reported, WHOLE_ARM } from './rowsWithoutPose.ts';
 
 export interface TipPose {
   readonly case: string;

@@ -1,8 +1,8 @@
 /** Every check of the selected joint: demand, allowable, where it governs, and the source of the rule; open ones say what to fill in. */
 import { poseText } from '../../report/shown.ts';
-import { WHOLE_ARM } from '../../studies/dutyRowParts.ts';
 import { isLasting } from '../../studies/lastingRows.ts';
 import { type CheckRow, isMissing, moreIsBetter } from '../../studies/results.ts';
+import { WHOLE_ARM } from '../../studies/rowsWithoutPose.ts';
 import { SHOWN_UNITS } from '../../units/format.ts';
 import { UtilisationBar, utilisationText } from '../figures/UtilisationBar.tsx';
 import { heldOf, standing } from '../figures/utilisationScale.ts';
