@@ -3,6 +3,7 @@ import type { CaseFile } from '../../arm/armFile.ts';
 import { fromSI, toSI } from '../../units/unit.ts';
 import { withCase } from '../store/caseEdits.ts';
 import { editFile } from '../store/documentStore.ts';
+import { CasePart } from './CasePart.tsx';
 import { AXES, type Put, refusalOf, tidied, type Vector, withComponent } from './caseField.ts';
 import { EntryField } from './EntryField.tsx';
 
@@ -26,22 +27,14 @@ function PayloadPart({ load, index, put }: CasePartProps) {
   const set = (change: Partial<NonNullable<CaseFile['payload']>>) =>
     refusalOf(editFile((now) => withCase(now, index, { payload: { ...payload!, ...change } })));
   return (
-    <fieldset className="case-part">
-      <legend>
-        <label>
-          <input
-            type="checkbox"
-            checked={payload !== undefined}
-            onChange={(event) => {
-              const fresh = event.target.checked
-                ? { mass_kg: 1, centre_mm: [0, 0, 0] as [number, number, number] }
-                : undefined;
-              put((now) => withCase(now, index, { payload: fresh }));
-            }}
-          />{' '}
-          Payload
-        </label>
-      </legend>
+    <CasePart
+      title="Payload"
+      there={payload !== undefined}
+      onChange={(there) => {
+        const fresh = there ? { mass_kg: 1, centre_mm: [0, 0, 0] as [number, number, number] } : undefined;
+        put((now) => withCase(now, index, { payload: fresh }));
+      }}
+    >
       {payload && (
         <div className="case-fields">
           <EntryField
@@ -67,7 +60,7 @@ function PayloadPart({ load, index, put }: CasePartProps) {
           {payload.inertia_kg_m2 && <span className="aside">Its inertia stays as the file has it.</span>}
         </div>
       )}
-    </fieldset>
+    </CasePart>
   );
 }
 
@@ -92,20 +85,14 @@ function TipForcePart({ load, index, put }: CasePartProps) {
     refusalOf(editFile((now) => withCase(now, index, { tip_force: { ...force!, ...change } })));
   const frame = force ? frameOf(force.direction) : 'any';
   return (
-    <fieldset className="case-part">
-      <legend>
-        <label>
-          <input
-            type="checkbox"
-            checked={force !== undefined}
-            onChange={(event) => {
-              const fresh = event.target.checked ? { force_N: 10, direction: 'any' as const } : undefined;
-              put((now) => withCase(now, index, { tip_force: fresh }));
-            }}
-          />{' '}
-          Tip force
-        </label>
-      </legend>
+    <CasePart
+      title="Tip force"
+      there={force !== undefined}
+      onChange={(there) => {
+        const fresh = there ? { force_N: 10, direction: 'any' as const } : undefined;
+        put((now) => withCase(now, index, { tip_force: fresh }));
+      }}
+    >
       {force && (
         <div className="case-fields">
           <EntryField
@@ -151,6 +138,6 @@ function TipForcePart({ load, index, put }: CasePartProps) {
           )}
         </div>
       )}
-    </fieldset>
+    </CasePart>
   );
 }

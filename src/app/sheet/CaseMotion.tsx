@@ -4,6 +4,7 @@ import { fromSI, toSI } from '../../units/unit.ts';
 import { withCase } from '../store/caseEdits.ts';
 import { editFile } from '../store/documentStore.ts';
 import type { CasePartProps } from './CaseLoads.tsx';
+import { CasePart } from './CasePart.tsx';
 import { refusalOf, tidied } from './caseField.ts';
 import { EntryField } from './EntryField.tsx';
 
@@ -20,22 +21,14 @@ export function CaseMotion({ file, load, index, put }: CasePartProps & { readonl
       editFile((now) => withCase(now, index, { motion: { ...motion!, [key]: motion![key].with(k, tidied(value)) } })),
     );
   return (
-    <fieldset className="case-part">
-      <legend>
-        <label>
-          <input
-            type="checkbox"
-            checked={motion !== undefined}
-            onChange={(event) => {
-              const fresh = event.target.checked
-                ? { speed_deg_s: names.map(() => 30), accel_deg_s2: names.map(() => 100) }
-                : undefined;
-              put((now) => withCase(now, index, { motion: fresh }));
-            }}
-          />{' '}
-          Motion, anything within these limits
-        </label>
-      </legend>
+    <CasePart
+      title="Motion, anything within these limits"
+      there={motion !== undefined}
+      onChange={(there) => {
+        const fresh = there ? { speed_deg_s: names.map(() => 30), accel_deg_s2: names.map(() => 100) } : undefined;
+        put((now) => withCase(now, index, { motion: fresh }));
+      }}
+    >
       {motion && (
         <table className="motion-table">
           <thead>
@@ -69,6 +62,6 @@ export function CaseMotion({ file, load, index, put }: CasePartProps & { readonl
           </tbody>
         </table>
       )}
-    </fieldset>
+    </CasePart>
   );
 }

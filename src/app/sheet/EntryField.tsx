@@ -4,6 +4,7 @@ import { entryFaultText, parseEntry } from '../../units/entry.ts';
 import { type Quantity, SHOWN_UNITS } from '../../units/format.ts';
 import { fromSI, toSI } from '../../units/unit.ts';
 import { useView } from '../store/viewStore.ts';
+import { FieldFrame, faultId } from './FieldFrame.tsx';
 
 export interface EntryFieldProps {
   readonly label: string;
@@ -58,36 +59,23 @@ export function EntryField({ label, quiet = false, value, quantity, otherwise, o
     }
   };
   return (
-    <span className={fault ? 'quantity refused' : 'quantity'}>
-      <label htmlFor={id} className={quiet ? 'for-readers' : undefined}>
-        {label}
-      </label>
-      <span className="quantity-box">
-        <input
-          id={id}
-          type="text"
-          inputMode="decimal"
-          autoComplete="off"
-          spellCheck={false}
-          value={typed ?? shown}
-          placeholder={otherwise ?? undefined}
-          aria-invalid={fault !== null}
-          aria-describedby={fault ? `${id}-fault` : undefined}
-          onChange={(event) => setTyped(event.target.value)}
-          onFocus={(event) => event.target.select()}
-          onBlur={commit}
-          onKeyDown={onKeyDown}
-        />
-        <span className="unit" aria-hidden="true">
-          {unit}
-        </span>
-      </span>
-      {fault && (
-        <span id={`${id}-fault`} className="fault" role="alert">
-          {fault}
-        </span>
-      )}
-    </span>
+    <FieldFrame id={id} label={label} quiet={quiet} unit={unit} fault={fault}>
+      <input
+        id={id}
+        type="text"
+        inputMode="decimal"
+        autoComplete="off"
+        spellCheck={false}
+        value={typed ?? shown}
+        placeholder={otherwise ?? undefined}
+        aria-invalid={fault !== null}
+        aria-describedby={fault ? faultId(id) : undefined}
+        onChange={(event) => setTyped(event.target.value)}
+        onFocus={(event) => event.target.select()}
+        onBlur={commit}
+        onKeyDown={onKeyDown}
+      />
+    </FieldFrame>
   );
 }
 

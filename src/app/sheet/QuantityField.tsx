@@ -4,6 +4,7 @@ import { entryFaultText, parseEntry } from '../../units/entry.ts';
 import { SHOWN_UNITS } from '../../units/format.ts';
 import { fromSI, toSI } from '../../units/unit.ts';
 import { useView } from '../store/viewStore.ts';
+import { FieldFrame, faultId } from './FieldFrame.tsx';
 
 export interface QuantityFieldProps {
   readonly label: string;
@@ -72,42 +73,29 @@ export function QuantityField(props: QuantityFieldProps) {
   };
 
   return (
-    <span className={fault ? 'quantity refused' : 'quantity'}>
-      <label htmlFor={id} className={quiet ? 'for-readers' : undefined}>
-        {label}
-      </label>
-      <span className="quantity-box">
-        <input
-          ref={input}
-          id={id}
-          type="text"
-          role="spinbutton"
-          inputMode="decimal"
-          autoComplete="off"
-          spellCheck={false}
-          value={typed ?? shown}
-          disabled={props.disabled}
-          aria-valuenow={Number(shown)}
-          aria-valuetext={`${shown} ${unit}`}
-          aria-valuemin={props.min === undefined ? undefined : Number(tidy(fromSI(props.min, unit), digits))}
-          aria-valuemax={props.max === undefined ? undefined : Number(tidy(fromSI(props.max, unit), digits))}
-          aria-invalid={fault !== null}
-          aria-describedby={fault ? `${id}-fault` : undefined}
-          onChange={(event) => setTyped(event.target.value)}
-          onFocus={(event) => event.target.select()}
-          onBlur={commit}
-          onKeyDown={onKeyDown}
-        />
-        <span className="unit" aria-hidden="true">
-          {unit}
-        </span>
-      </span>
-      {fault && (
-        <span id={`${id}-fault`} className="fault" role="alert">
-          {fault}
-        </span>
-      )}
-    </span>
+    <FieldFrame id={id} label={label} quiet={quiet} unit={unit} fault={fault}>
+      <input
+        ref={input}
+        id={id}
+        type="text"
+        role="spinbutton"
+        inputMode="decimal"
+        autoComplete="off"
+        spellCheck={false}
+        value={typed ?? shown}
+        disabled={props.disabled}
+        aria-valuenow={Number(shown)}
+        aria-valuetext={`${shown} ${unit}`}
+        aria-valuemin={props.min === undefined ? undefined : Number(tidy(fromSI(props.min, unit), digits))}
+        aria-valuemax={props.max === undefined ? undefined : Number(tidy(fromSI(props.max, unit), digits))}
+        aria-invalid={fault !== null}
+        aria-describedby={fault ? faultId(id) : undefined}
+        onChange={(event) => setTyped(event.target.value)}
+        onFocus={(event) => event.target.select()}
+        onBlur={commit}
+        onKeyDown={onKeyDown}
+      />
+    </FieldFrame>
   );
 }
 
